@@ -1,0 +1,1 @@
+"""Materials, fasteners and their curves."""
