@@ -43,7 +43,8 @@ class Fastener:
     ----------
     name : str
     kind : str
-        ``solid-rivet``, ``clearance-bolt``, ``close-fit-bolt``, ``interference-pin``, ``tapered-pin`` or ``blind-rivet``.
+        ``solid-rivet``, ``clearance-bolt``, ``close-fit-bolt``, ``interference-pin``, ``tapered-pin`` or
+        ``blind-rivet``.
     modulus : float
         Young's modulus of the shank [MPa].
     poisson : float
