@@ -17,7 +17,7 @@ Array = NDArray[np.float64]
 
 TAILS = ("limit", "continued", "shallower")
 LOG_LIVES = np.linspace(0.0, 20.0, 10001)
-"""log10 N at which curves are tabulated; linear interpolation between is within 1e-6 of the life (tested)."""
+"""log10 N at which curves are tabulated; linear interpolation between is within 2e-5 of the life (tested)."""
 
 
 @dataclass(frozen=True)
