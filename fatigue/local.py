@@ -26,8 +26,8 @@ class HoleFactors:
     k_bypass, k_bearing, k_bend : ndarray
         On gross bypass stress, on bearing stress (tension, with the pin's reaction), on bending stress; countersink and
         head fixity included.
-    sink : ndarray
-        Countersink factor, 1 where there is none.
+    sink, tilt : ndarray
+        Countersink and head-fixity factors, 1 where there is nothing to say; both are in the ones above.
     practice : ndarray
         Product of the two practice factors.
     """
@@ -91,7 +91,7 @@ def hole_factors(splice: Splice, joint: Joint) -> HoleFactors:
         width_ratio=x,
         k_bypass=sink * k_open,
         k_bearing=sink * (tilt * concentration.COSINE_BEARING + x / 2 * k_open),
-        k_bend=np.asarray(concentration.bending_thin_sheet(poisson)),
+        k_bend=concentration.bending_any_sheet(poisson, diameter / joint.thickness),
         sink=sink,
         tilt=tilt,
         practice=np.array([row.hole.practice.hole * row.hole.practice.filling for row in rows]),

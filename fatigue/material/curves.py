@@ -117,8 +117,8 @@ class CurveFamily:
             exponent=(1 - weight) * a3[lower] + weight * a3[upper],
             log_stress=_with_tail(table, self.tested_cycles[1], tail),
             tail=tail,
-            tested_cycles=self.tested_cycles,
-            tested_ratio=self.tested_ratio,
+            tested_cycles=np.tile(self.tested_cycles, (given.size, 1)),
+            tested_ratio=np.tile(self.tested_ratio, (given.size, 1)),
             neighbours=(kt[lower], kt[upper]),
         )
 
@@ -158,7 +158,8 @@ class LocationCurves:
     log_stress : ndarray, shape (L, len(LOG_LIVES))
         log10 of the nominal equivalent stress [MPa] at `LOG_LIVES`, falling.
     tail : str
-    tested_cycles, tested_ratio : tuple of float
+    tested_cycles, tested_ratio : ndarray, shape (L, 2)
+        First and last of N and of R the tests cover.
     neighbours : tuple of ndarray, shape (L,)
         K_t of the family's members on either side.
     """
@@ -168,9 +169,23 @@ class LocationCurves:
     exponent: Array
     log_stress: Array
     tail: str
-    tested_cycles: tuple[float, float]
-    tested_ratio: tuple[float, float]
+    tested_cycles: Array
+    tested_ratio: Array
     neighbours: tuple[Array, Array]
+
+    def only(self, index: int) -> LocationCurves:
+        """Return the curve of one location."""
+        one = slice(index, index + 1)
+        return LocationCurves(
+            given=self.given[one],
+            severity=self.severity[one],
+            exponent=self.exponent[one],
+            log_stress=self.log_stress[one],
+            tail=self.tail,
+            tested_cycles=self.tested_cycles[one],
+            tested_ratio=self.tested_ratio[one],
+            neighbours=(self.neighbours[0][one], self.neighbours[1][one]),
+        )
 
     def equivalent_stress(self, low: Array, high: Array) -> Array:
         """Return the nominal equivalent stress of local cycles, S_max (1 - R)^A3, 0 without tension [MPa].
@@ -211,5 +226,22 @@ class LocationCurves:
         """Tell which local cycles have a stress ratio the tests do not cover, shape (L, n)."""
         with np.errstate(divide="ignore", invalid="ignore"):
             ratio = low / high
-        first, last = self.tested_ratio
+        first, last = self.tested_ratio[:, :1], self.tested_ratio[:, 1:]
         return np.asarray((high > 0.0) & ((ratio < first) | (ratio > last)))
+
+
+def stacked(curves: list[LocationCurves]) -> LocationCurves:
+    """Return the curves of several locations, of whatever family, as one."""
+    return LocationCurves(
+        given=np.concatenate([c.given for c in curves]),
+        severity=np.concatenate([c.severity for c in curves]),
+        exponent=np.concatenate([c.exponent for c in curves]),
+        log_stress=np.concatenate([c.log_stress for c in curves]),
+        tail=curves[0].tail,
+        tested_cycles=np.concatenate([c.tested_cycles for c in curves]),
+        tested_ratio=np.concatenate([c.tested_ratio for c in curves]),
+        neighbours=(
+            np.concatenate([c.neighbours[0] for c in curves]),
+            np.concatenate([c.neighbours[1] for c in curves]),
+        ),
+    )

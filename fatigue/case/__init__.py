@@ -1,0 +1,1 @@
+"""The case file: read strictly, every fault at once."""

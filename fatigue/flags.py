@@ -1,0 +1,90 @@
+"""What a reader must know of a location before trusting its life."""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from fatigue.hole.concentration import LARGEST_ROW_RATIO
+from fatigue.hole.countersink import KNIFE_EDGE, SMALLEST_SHANK
+from fatigue.joint import Joint
+from fatigue.local import LocalStress
+from fatigue.material.curves import LocationCurves
+from fatigue.splice import Splice
+
+Array = NDArray[np.float64]
+
+USUAL_EDGE = 2.0
+"""Edge distance over hole diameter below which a hole is flagged (common practice, no source)."""
+WORTH_SAYING = 0.01
+"""Share of the damage that makes a doubtful part of it worth a flag."""
+
+
+def geometry_flags(splice: Splice, joint: Joint, local: LocalStress) -> list[list[str]]:
+    """Return each location's flags on its geometry, by location."""
+    flags: list[list[str]] = []
+    for i, (r, s) in enumerate(splice.locations):
+        row, sheet, own = splice.rows[r], splice.sheets[s], []
+        if local.factors.width_ratio[i] > LARGEST_ROW_RATIO:
+            own.append(f"d/pitch {local.factors.width_ratio[i]:.2f} is beyond the {LARGEST_ROW_RATIO:g} computed")
+        if row.countersink is not None and row.countersink.sheet == s:
+            shank = 1 - row.countersink.depth / joint.thickness[i]
+            if shank < KNIFE_EDGE:
+                own.append(f"knife edge: straight shank b/t {shank:.2f}")
+            if shank < SMALLEST_SHANK:
+                own.append(f"countersink factor extrapolated below b/t {SMALLEST_SHANK:g}")
+        ends_here = (sheet.end == "free" and r == sheet.last_row) or (sheet.start == "free" and r == sheet.first_row)
+        if ends_here and sheet.edge < USUAL_EDGE * row.hole_diameter:
+            own.append(f"edge distance {sheet.edge / row.hole_diameter:.1f} d is under {USUAL_EDGE:g} d")
+        flags.append(own)
+    return flags
+
+
+def stress_flags(splice: Splice, joint: Joint, local: LocalStress) -> list[list[str]]:
+    """Return each location's flags on the stress it sees, by location."""
+    flags: list[list[str]] = []
+    top, bottom = local.levels[-1], local.levels[0]
+    for i, (_, s) in enumerate(splice.locations):
+        material, own = splice.sheets[s].material, []
+        net = local.net_per_stress[i] * max(top, 0.0)
+        if net > material.ultimate:
+            own.append(f"net section {net:.0f} MPa above the sheet's strength {material.ultimate:.0f} MPa")
+        elif net > material.yield_stress:
+            own.append(f"net section {net:.0f} MPa above yield {material.yield_stress:.0f} MPa")
+        if bottom < 0.0 and joint.face[i] and splice.bending != "none":
+            own.append("bending in compression held at its light-load arm")
+        flags.append(own)
+    return flags
+
+
+def curve_flags(
+    curves: LocationCurves, low: Array, high: Array, by_cycle: Array, recounted: Array, folded: Array
+) -> list[list[str]]:
+    """Return each location's flags on its S-N curve and its counting, by location."""
+    total = by_cycle.sum(axis=1)
+    with np.errstate(divide="ignore", invalid="ignore"):
+        share = np.where(total[:, None] > 0, by_cycle / total[:, None], 0.0)
+    life = curves.life(low, high)
+    tail = (share * (life > curves.tested_cycles[:, 1:])).sum(axis=1)
+    short = (share * (life < curves.tested_cycles[:, :1])).sum(axis=1)
+    ratio = (share * curves.outside_ratio(low, high)).sum(axis=1)
+    flags: list[list[str]] = []
+    for i in range(total.size):
+        own = []
+        if total[i] == 0.0:
+            own.append("no damage: no cycle reaches the curve")
+        if curves.given[i] != curves.severity[i]:
+            own.append(f"severity {curves.given[i]:.2f} outside the family's K_t, taken at {curves.severity[i]:g}")
+        for part, words in (
+            (tail[i], "of the damage beyond the last tested life"),
+            (short[i], "of the damage at lives shorter than tested"),
+            (ratio[i], "of the damage at stress ratios not tested"),
+        ):
+            if part >= WORTH_SAYING:
+                own.append(f"{100 * part:.0f} % {words}")
+        if recounted[i]:
+            own.append("map not monotone: local history counted anew")
+        if folded[i]:
+            own.append("map not monotone, no history to count anew: cycles mapped by their ends")
+        flags.append(own)
+    return flags

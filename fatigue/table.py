@@ -1,0 +1,115 @@
+"""The ranked table: one line per location, worst first."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+import numpy as np
+import pandas as pd
+from numpy.typing import NDArray
+
+from fatigue.case.build import Case
+from fatigue.damage import damage_per_cycle, life_in_flights
+from fatigue.flags import curve_flags, geometry_flags, stress_flags
+from fatigue.inspection import ThresholdFactor, inspection_priority
+from fatigue.joint import Joint
+from fatigue.loads import CountedLoads
+from fatigue.local import LocalStress
+from fatigue.material.curves import LocationCurves, stacked
+
+if TYPE_CHECKING:
+    from fatigue.life import RouteResult
+
+Array = NDArray[np.float64]
+
+
+def ranked_table(
+    case: Case,
+    loads: CountedLoads,
+    joint: Joint,
+    local: LocalStress,
+    curves: LocationCurves,
+    routes: dict[str, RouteResult],
+    factor: ThresholdFactor,
+) -> tuple[pd.DataFrame, NDArray[np.int64]]:
+    """Return the frame behind ``rows.csv`` and the location on each of its lines.
+
+    Stresses are those at the spectrum's largest remote stress; `peak_min_MPa` is that at its smallest.
+    """
+    splice, settings = case.splice, case.inspection
+    own = routes[case.life.credit]
+    none = routes["none"]
+    no_credit = none.life
+    basis = own.life if settings.use_credit else no_credit
+    threshold = basis * factor.total
+    share_used = np.where(np.isfinite(threshold), case.loads.flown_flights / threshold, 0.0)
+    top = local.levels.size - 1
+    peak = local.peak[case.life.credit]
+    treated = peak[:, top] / none_safe(local.peak["none"][:, top])
+    lower, upper = neighbour_lives(case, curves, own, loads)
+    flags = [
+        [*a, *b, *c]
+        for a, b, c in zip(
+            geometry_flags(splice, joint, local),
+            stress_flags(splice, joint, local),
+            curve_flags(curves, own.low, own.high, own.by_cycle, own.recounted, own.folded),
+            strict=True,
+        )
+    ]
+    frame = pd.DataFrame(
+        {
+            "rank": 0,
+            "row": [splice.rows[r].name for r in joint.row],
+            "sheet": [splice.sheets[s].name for s in joint.sheet],
+            "face": joint.face,
+            "hidden": joint.hidden,
+            "transfer_fraction": joint.transfer,
+            "bypass_MPa": joint.bypass_per_stress * local.levels[top],
+            "bearing_MPa": joint.bearing_per_stress * local.levels[top],
+            "bending_MPa": local.bending[:, top],
+            "k_bypass": local.factors.k_bypass,
+            "k_bearing": local.factors.k_bearing,
+            "k_bend": local.factors.k_bend,
+            "peak_max_MPa": own.high.max(axis=1, initial=-np.inf) if own.high.size else peak[:, top],
+            "peak_min_MPa": own.low.min(axis=1, initial=np.inf) if own.low.size else peak[:, top],
+            "from_bypass_MPa": local.parts.bypass[:, top] * treated,
+            "from_bearing_MPa": local.parts.bearing[:, top] * treated,
+            "from_bending_MPa": local.parts.bending[:, top] * treated,
+            "severity": curves.given,
+            "damage_per_flight": own.damage,
+            "life_flights": own.life,
+            "life_none_flights": none.life,
+            "life_practice_flights": routes["practice"].life,
+            "life_contact_flights": routes["contact"].life if "contact" in routes else np.nan,
+            "life_no_credit_flights": no_credit,
+            "life_lower_kt_flights": lower,
+            "life_upper_kt_flights": upper,
+            "threshold_flights": threshold,
+            "share_used": share_used,
+            "priority": inspection_priority(share_used, threshold, joint.hidden),
+            "flags": ["; ".join(own) for own in flags],
+        }
+    )
+    # equal lives keep the order along the load, so that a symmetric joint always reads the same
+    order = np.argsort(np.round(np.log(np.maximum(own.life, 1e-300)), 9), kind="stable")
+    frame = frame.iloc[order].reset_index(drop=True)
+    frame["rank"] = np.arange(1, order.size + 1)
+    return frame, order.astype(np.int64)
+
+
+def none_safe(values: Array) -> Array:
+    """Return values with zeros made one, for ratios that are then zero anyway."""
+    return np.where(values == 0.0, 1.0, values)
+
+
+def neighbour_lives(
+    case: Case, curves: LocationCurves, own: RouteResult, loads: CountedLoads
+) -> tuple[Array, Array]:
+    """Return the lives at the family's members on either side of each severity: the model's own spread."""
+    lives = []
+    for kt in curves.neighbours:
+        families = [case.families[case.splice.sheets[s].material.name] for _, s in case.splice.locations]
+        member = stacked([family.at([k], case.life.tail) for family, k in zip(families, kt, strict=True)])
+        damage = damage_per_cycle(member.life(own.low, own.high), loads.cycles.count).sum(axis=1)
+        lives.append(life_in_flights(damage, case.life.damage_sum))
+    return lives[0], lives[1]
