@@ -36,9 +36,9 @@ def peak_parts(
 ) -> PeakParts:
     """Superpose bypass, bearing and bending at the edge of a hole.
 
-    peak = K_bypass (bypass + transfer/2) + K_pressure |bearing| + K_bend bend. Under reversed load the pin bears on the
-    other side and still pushes: the pressure part stays tensile while the pin's reaction, which counts as remote stress,
-    changes sign with the load.
+    peak = K_bypass (bypass + transfer/2) + K_pressure |bearing| + K_bend bend. Under reversed load the pin bears on
+    the other side and still pushes: the pressure part stays tensile while the pin's reaction, which counts as remote
+    stress, changes sign with the load.
 
     Parameters
     ----------
