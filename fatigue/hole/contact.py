@@ -16,6 +16,7 @@ from functools import cached_property, lru_cache
 
 import numpy as np
 from numpy.typing import NDArray
+from scipy.linalg.blas import dgemm
 
 from fatigue.hole.sheet import SheetEdge
 
@@ -210,8 +211,9 @@ class PinInHole:
     def _start(self, closed: Mask) -> Array:
         """Return the tableau for a set of contacts; the pin's movement is always solved for."""
         matrix, columns, _ = self._system
-        tableau = np.hstack([matrix, columns])
-        return _exchange(tableau, np.flatnonzero(np.append(closed, True)))
+        tableau = np.asfortranarray(np.hstack([matrix, columns]))
+        _exchange(tableau, np.flatnonzero(np.append(closed, True)))
+        return tableau
 
     @cached_property
     def _closed_all_round(self) -> Array:
@@ -239,60 +241,59 @@ class PinInHole:
         force, gap, shift = np.zeros((len(load), size)), np.zeros((len(load), size)), np.zeros(len(load))
         loose = ~load[:, :2].any(axis=1) & (load[:, 2] <= 0)
         gap[loose] = -load[loose, 2:]
+        limits = self._limits(load)
         work = np.flatnonzero(~loose)
-        tableau: Array | None = None
-        closed = np.zeros(size, dtype=np.bool_)
+        ahead = 1
+        if work.size:
+            closed, tableau = self._first_guess(load[work[0]])
         while work.size:
-            if tableau is None:
-                closed, tableau = self._first_guess(load[work[0]])
-            answers = load[work] @ tableau[:, size + 1 :].T
-            bad = self._violated(answers[:, :size], closed, load[work]).any(axis=1)
-            good = int(np.argmax(bad)) if bad.any() else work.size
-            held, answers = work[:good], answers[:good]
-            force[held] = np.where(closed, np.maximum(answers[:, :size], 0.0), 0.0)
-            gap[held] = np.where(closed, 0.0, np.maximum(answers[:, :size], 0.0))
-            shift[held] = answers[:, size]
-            work = work[good:]
-            if work.size:
-                closed, tableau = self._settle(load[work[0]], closed, tableau)
+            near = work[:ahead]
+            answers = load[near] @ tableau[:, size + 1 :].T
+            bad = _violated(answers[:, :size], closed, limits[near]).any(axis=1)
+            good = int(np.argmax(bad)) if bad.any() else near.size
+            held, work = near[:good], work[good:]
+            force[held] = np.where(closed, np.maximum(answers[:good, :size], 0.0), 0.0)
+            gap[held] = np.where(closed, 0.0, np.maximum(answers[:good, :size], 0.0))
+            shift[held] = answers[:good, size]
+            ahead = 1 if good < near.size else 2 * ahead
+            if good < near.size:
+                closed = self._settle(load[work[0]], limits[work[0]], closed, tableau)
         return self._contact(load, force, gap, shift)
 
     def _first_guess(self, load: Array) -> tuple[Mask, Array]:
         if load[2] > 0:
-            return np.ones(self.points, dtype=np.bool_), self._closed_all_round.copy()
+            return np.ones(self.points, dtype=np.bool_), self._closed_all_round.copy(order="F")
         if load[2] == 0:
-            closed = np.ones(self.points, dtype=np.bool_)
-            if load[1]:
-                closed = self.grid.cosines[:, 1] * np.sign(load[1]) > 0
+            push = self.grid.cosines[:, 1] * load[1] / self.modulus
+            closed = self.loads[:, 0] * load[0] < 2 * push
         else:
             closed = np.zeros(self.points, dtype=np.bool_)
             if load[1]:
                 closed[0 if load[1] > 0 else -1] = True
         return closed, self._start(closed)
 
-    def _violated(self, answers: Array, closed: Mask, load: Array) -> Mask:
-        """Tell which points pull or overlap, shape (n, P)."""
+    def _limits(self, load: Array) -> Array:
+        """Return the rounding allowed in pressure and in gap at each load, shape (n, 2)."""
         scale = self._system[2]
         size = np.abs(load[:, :2]).sum(axis=1) + np.abs(load[:, 2]) * scale
-        limit = ROUNDING * np.where(closed, size[:, None], size[:, None] / scale)
-        return np.asarray(answers < -limit)
+        return np.asarray(ROUNDING * np.column_stack([size, size / scale]))
 
-    def _settle(self, load: Array, closed: Mask, tableau: Array) -> tuple[Mask, Array]:
-        """Exchange points until none pulls or overlaps."""
+    def _settle(self, load: Array, limits: Array, closed: Mask, tableau: Array) -> Mask:
+        """Exchange points until none pulls or overlaps; the tableau is changed in place."""
         size = self.points
         closed = closed.copy()
         fewest, patience = size + 1, PATIENCE
         for _ in range(20 * size):
             answers = tableau[:size, size + 1 :] @ load
-            bad = np.flatnonzero(self._violated(answers[None], closed, load[None])[0])
+            bad = np.flatnonzero(_violated(answers, closed, limits))
             if bad.size == 0:
-                return closed, tableau
+                return closed
             if bad.size < fewest:
                 fewest, patience = bad.size, PATIENCE
             else:
                 patience -= 1
             chosen = bad if patience > 0 else bad[-1:]
-            tableau = _exchange(tableau, chosen)
+            _exchange(tableau, chosen)
             closed[chosen] = ~closed[chosen]
         raise ArithmeticError("the contact did not settle")
 
@@ -310,21 +311,21 @@ class PinInHole:
         return Contact(g.theta, pressure, gap, shift, hoop)
 
 
-def _exchange(tableau: Array, chosen: NDArray[np.int64]) -> Array:
-    """Exchange known and unknown of the chosen points: the principal pivot of w = M z + q.
+def _violated(answers: Array, closed: Mask, limits: Array) -> Mask:
+    """Tell which points pull or overlap; limits are those of pressure and gap, on the last axis."""
+    return np.asarray(answers < -np.where(closed, limits[..., :1], limits[..., 1:]))
 
-    Solves their rows for their unknowns and puts those into the other rows.
+
+def _exchange(tableau: Array, chosen: NDArray[np.int64]) -> None:
+    """Exchange known and unknown of the chosen points in place: the principal pivot of w = M z + q.
+
+    Solves their rows for their unknowns and puts those into the other rows. The tableau is column-major.
     """
-    rows = tableau[chosen]
+    rows, columns = tableau[chosen], tableau[:, chosen]
     block = rows[:, chosen]
-    rows = rows.copy()
     rows[:, chosen] = -np.eye(chosen.size)
     new = np.linalg.solve(block, -rows) if chosen.size > 1 else -rows / block
-    columns = tableau[:, chosen]
-    result = tableau.copy()
-    result[:, chosen] = 0.0
-    result[chosen] = 0.0
-    columns = columns.copy()
     columns[chosen] = np.eye(chosen.size)
-    result += columns @ new
-    return np.asarray(result)
+    tableau[:, chosen] = 0.0
+    tableau[chosen] = 0.0
+    dgemm(1.0, columns, new, beta=1.0, c=tableau, overwrite_c=True)
