@@ -15,7 +15,7 @@ from dataclasses import dataclass
 from functools import cached_property, lru_cache
 
 import numpy as np
-from numpy.typing import NDArray
+from numpy.typing import ArrayLike, NDArray
 from scipy.linalg.blas import dgemm
 
 from fatigue.hole.sheet import SheetEdge
@@ -219,7 +219,7 @@ class PinInHole:
     def _closed_all_round(self) -> Array:
         return self._start(np.ones(self.points, dtype=np.bool_))
 
-    def solve(self, bypass: Array | float, bearing: Array | float, fit: Array | float) -> Contact:
+    def solve(self, bypass: ArrayLike, bearing: ArrayLike, fit: ArrayLike) -> Contact:
         """Solve the contact at one or many loads, each near the one before it.
 
         Parameters
@@ -235,7 +235,9 @@ class PinInHole:
         -------
         Contact
         """
-        load = np.stack(np.broadcast_arrays(*np.atleast_1d(bypass, bearing, fit)), axis=-1).astype(np.float64)
+        load = np.stack(np.broadcast_arrays(*np.atleast_1d(*map(np.asarray, (bypass, bearing, fit)))), axis=-1).astype(
+            np.float64
+        )
         load[:, 1] *= 2 / np.pi
         size = self.points
         force, gap, shift = np.zeros((len(load), size)), np.zeros((len(load), size)), np.zeros(len(load))
