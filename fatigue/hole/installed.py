@@ -97,7 +97,7 @@ def installed(
         flags.append(f"fit {100 * nominal:g} % outside the {100 * SMALLEST_FIT:g} to {100 * LARGEST_FIT:g} % checked")
     if cold_expansion == 0 and nominal <= 0:
         return Installed(nominal, 0.0, nominal, 1.0, tuple(flags))
-    ring = expand(sheet, max(cold_expansion, 0.0), max(nominal, 0.0), (1 - pin_poisson) / pin_modulus)
+    ring = expand(sheet, cold_expansion, max(nominal, 0.0), (1 - pin_poisson) / pin_modulus)
     if nominal > 0 and ring.retained_fit < 0.995 * nominal:
         flags.append(f"the hole yields: fit {100 * nominal:.2f} % presses like {100 * ring.retained_fit:.2f} %")
     kept = ring.retained_fit if nominal > 0 else nominal

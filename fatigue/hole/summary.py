@@ -8,7 +8,7 @@ import numpy as np
 from numpy.typing import ArrayLike, NDArray
 
 from fatigue.hole.contact import Contact, PinInHole
-from fatigue.hole.edge import FRICTION_RISE, bending_around, contact_ends, pin_in_hole
+from fatigue.hole.edge import FRICTION_BEARING, FRICTION_BYPASS, bending_around, contact_ends, pin_in_hole, raised_loads
 from fatigue.hole.sheet import LARGEST_RATIO, Edge
 
 Array = NDArray[np.float64]
@@ -163,7 +163,7 @@ def factor_against_load(hole: OneHole, fits: ArrayLike, shares: ArrayLike) -> Ar
         The largest over the edge, 45 to 135 deg, bending left out.
     """
     ready, share = _ready(hole), np.asarray(shares, dtype=np.float64)
-    raised, passing = _pin_load(hole)
+    passing, raised = _loads(hole)
     out = []
     for fit in np.asarray(fits, dtype=np.float64):
         levels = np.concatenate([[0.0], share])
@@ -181,7 +181,10 @@ def hole_flags(hole: OneHole) -> list[str]:
     if hole.end < 1.5 * hole.diameter:
         flags.append(f"end distance {hole.end / hole.diameter:.1f} d is under the 1.5 d checked")
     if hole.friction > 0:
-        flags.append(f"friction taken as {FRICTION_RISE:g} x its coefficient on the pin's part, a stated multiplier")
+        flags.append(
+            "friction is not solved but a stated multiplier: "
+            f"1 + {FRICTION_BEARING:g} x coefficient on the pin's part, 1 + {FRICTION_BYPASS:g} x on the bypass"
+        )
     return flags
 
 
@@ -192,16 +195,16 @@ def _ready(hole: OneHole) -> PinInHole:
     )
 
 
-def _pin_load(hole: OneHole) -> tuple[float, float]:
-    """Return the bearing stress raised by friction, and the bypass less the reaction that rise would have."""
-    raised = 1 + FRICTION_RISE * hole.friction
+def _loads(hole: OneHole) -> tuple[float, float]:
+    """Return bypass and bearing stress, raised by friction."""
     ratio = 0.0 if hole.edge == "wide" else hole.diameter / hole.width
-    return raised * hole.bearing, hole.bypass - (raised - 1) * ratio * hole.bearing / 2
+    passing, pressing = raised_loads(np.array(hole.bypass), np.array(hole.bearing), ratio, friction=hole.friction)
+    return float(passing), float(pressing)
 
 
 def _both_ways(hole: OneHole) -> tuple[Array, Array, Contact, str]:
     ready = _ready(hole)
-    bearing, bypass = _pin_load(hole)
+    bypass, bearing = _loads(hole)
     plain = ready.solve([0.0, bypass], [0.0, bearing], hole.fit)
     around = bending_around(np.degrees(plain.theta), hole.k_bend)
     outside = plain.hoop[1] + hole.bend * around
