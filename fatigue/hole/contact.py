@@ -4,9 +4,7 @@ Gap and pressure are complementary: gap >= 0, pressure >= 0, gap x pressure = 0,
 
     gap = opening(remote load) + opening(pressure) - fit - U cos(t),    resultant of the pressure = pin load.
 
-The points in contact are found by principal pivoting on one tableau: it holds the answer of every point to the loads
-for the present set of contacts, so that a new load costs a product, and a point that closes or opens a rank-one change.
-Loads taken in order of size change few points at a time; that makes a whole map cheap.
+`fatigue.hole.complementarity` finds the points in contact.
 """
 
 from __future__ import annotations
@@ -16,8 +14,8 @@ from functools import cached_property, lru_cache
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
-from scipy.linalg.blas import dgemm
 
+from fatigue.hole.complementarity import UnilateralContact
 from fatigue.hole.sheet import SheetEdge
 
 Array = NDArray[np.float64]
@@ -25,12 +23,6 @@ Mask = NDArray[np.bool_]
 
 POINTS = 181
 """Points on the half circle."""
-FLOATING = 1e-7
-"""Stiffness that centres an unloaded pin, over the stiffness of the contact."""
-ROUNDING = 1e-9
-"""Pressure and gap below this share of their scale count as nothing."""
-PATIENCE = 8
-"""Exchanges of many points at once without progress before they are exchanged one by one."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -194,30 +186,10 @@ class PinInHole:
         )
 
     @cached_property
-    def _system(self) -> tuple[Array, Array, float]:
-        """The whole linear system, last row the pin's equilibrium; its load columns; the scale of its stiffness."""
-        size = self.points
-        cosine = self.grid.cosines[:, 1]
-        scale = 1.0 / float(self.compliance[0, 0])
-        matrix = np.empty((size + 1, size + 1))
-        matrix[:size, :size] = self.compliance
-        matrix[:size, size], matrix[size, :size] = -cosine, cosine
-        matrix[size, size] = FLOATING * scale
-        columns = np.zeros((size + 1, 3))
-        columns[:size] = self.loads
-        columns[size, 1] = -(size - 1) / 2
-        return matrix, columns, scale
-
-    def _start(self, closed: Mask) -> Array:
-        """Return the tableau for a set of contacts; the pin's movement is always solved for."""
-        matrix, columns, _ = self._system
-        tableau = np.asfortranarray(np.hstack([matrix, columns]))
-        _exchange(tableau, np.flatnonzero(np.append(closed, True)))
-        return tableau
-
-    @cached_property
-    def _closed_all_round(self) -> Array:
-        return self._start(np.ones(self.points, dtype=np.bool_))
+    def problem(self) -> UnilateralContact:
+        """The contact of the pin, which is free along the load axis."""
+        resultant = np.array([0.0, (self.points - 1) / 2, 0.0])
+        return UnilateralContact(self.compliance, self.grid.cosines[:, 1], self.loads, resultant)
 
     def solve(self, bypass: ArrayLike, bearing: ArrayLike, fit: ArrayLike) -> Contact:
         """Solve the contact at one or many loads, each near the one before it.
@@ -239,65 +211,13 @@ class PinInHole:
             np.float64
         )
         load[:, 1] *= 2 / np.pi
-        size = self.points
-        force, gap, shift = np.zeros((len(load), size)), np.zeros((len(load), size)), np.zeros(len(load))
         loose = ~load[:, :2].any(axis=1) & (load[:, 2] <= 0)
+        force, gap, shift = np.zeros((len(load), self.points)), np.zeros((len(load), self.points)), np.zeros(len(load))
         gap[loose] = -load[loose, 2:]
-        limits = self._limits(load)
-        work = np.flatnonzero(~loose)
-        ahead = 1
-        if work.size:
-            closed, tableau = self._first_guess(load[work[0]])
-        while work.size:
-            near = work[:ahead]
-            answers = load[near] @ tableau[:, size + 1 :].T
-            bad = _violated(answers[:, :size], closed, limits[near]).any(axis=1)
-            good = int(np.argmax(bad)) if bad.any() else near.size
-            held, work = near[:good], work[good:]
-            force[held] = np.where(closed, np.maximum(answers[:good, :size], 0.0), 0.0)
-            gap[held] = np.where(closed, 0.0, np.maximum(answers[:good, :size], 0.0))
-            shift[held] = answers[:good, size]
-            ahead = 1 if good < near.size else 2 * ahead
-            if good < near.size:
-                closed = self._settle(load[work[0]], limits[work[0]], closed, tableau)
+        held = load[~loose]
+        size = np.abs(held[:, :2]).sum(axis=1) + np.abs(held[:, 2]) * self.problem.stiffness
+        force[~loose], gap[~loose], shift[~loose] = self.problem.follow(held, size)
         return self._contact(load, force, gap, shift)
-
-    def _first_guess(self, load: Array) -> tuple[Mask, Array]:
-        if load[2] > 0:
-            return np.ones(self.points, dtype=np.bool_), self._closed_all_round.copy(order="F")
-        if load[2] == 0:
-            push = self.grid.cosines[:, 1] * load[1] / self.modulus
-            closed = self.loads[:, 0] * load[0] < 2 * push
-        else:
-            closed = np.zeros(self.points, dtype=np.bool_)
-            if load[1]:
-                closed[0 if load[1] > 0 else -1] = True
-        return closed, self._start(closed)
-
-    def _limits(self, load: Array) -> Array:
-        """Return the rounding allowed in pressure and in gap at each load, shape (n, 2)."""
-        scale = self._system[2]
-        size = np.abs(load[:, :2]).sum(axis=1) + np.abs(load[:, 2]) * scale
-        return np.asarray(ROUNDING * np.column_stack([size, size / scale]))
-
-    def _settle(self, load: Array, limits: Array, closed: Mask, tableau: Array) -> Mask:
-        """Exchange points until none pulls or overlaps; the tableau is changed in place."""
-        size = self.points
-        closed = closed.copy()
-        fewest, patience = size + 1, PATIENCE
-        for _ in range(20 * size):
-            answers = tableau[:size, size + 1 :] @ load
-            bad = np.flatnonzero(_violated(answers, closed, limits))
-            if bad.size == 0:
-                return closed
-            if bad.size < fewest:
-                fewest, patience = bad.size, PATIENCE
-            else:
-                patience -= 1
-            chosen = bad if patience > 0 else bad[-1:]
-            _exchange(tableau, chosen)
-            closed[chosen] = ~closed[chosen]
-        raise ArithmeticError("the contact did not settle")
 
     def _contact(self, load: Array, force: Array, gap: Array, shift: Array) -> Contact:
         sheet, g = self.sheet, self.grid
@@ -311,23 +231,3 @@ class PinInHole:
         smooth[:, 1] += (3 - sheet.poisson) / 2 * load[:, 1]
         hoop = smooth @ g.cosines[:, :low].T - pressure
         return Contact(g.theta, pressure, gap, shift, hoop)
-
-
-def _violated(answers: Array, closed: Mask, limits: Array) -> Mask:
-    """Tell which points pull or overlap; limits are those of pressure and gap, on the last axis."""
-    return np.asarray(answers < -np.where(closed, limits[..., :1], limits[..., 1:]))
-
-
-def _exchange(tableau: Array, chosen: NDArray[np.int64]) -> None:
-    """Exchange known and unknown of the chosen points in place: the principal pivot of w = M z + q.
-
-    Solves their rows for their unknowns and puts those into the other rows. The tableau is column-major.
-    """
-    rows, columns = tableau[chosen], tableau[:, chosen]
-    block = rows[:, chosen]
-    rows[:, chosen] = -np.eye(chosen.size)
-    new = np.linalg.solve(block, -rows) if chosen.size > 1 else -rows / block
-    columns[chosen] = np.eye(chosen.size)
-    tableau[:, chosen] = 0.0
-    tableau[chosen] = 0.0
-    dgemm(1.0, columns, new, beta=1.0, c=tableau, overwrite_c=True)
