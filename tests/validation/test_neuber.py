@@ -18,16 +18,23 @@ def test_against_a_root_finder(elastic):
 
 def test_an_elastic_notch_keeps_everything():
     assert float(surviving(-100.0, 50.0, -150.0, *CURVE)) == pytest.approx(-100.0, rel=1e-4)
+    assert float(surviving(100.0, 150.0, -50.0, *CURVE)) == pytest.approx(100.0, rel=1e-4)
 
 
-def test_a_high_load_washes_tension_out():
-    left = [float(surviving(200.0, top, 200.0, *CURVE)) for top in (250.0, 400.0, 600.0, 900.0)]
-    assert np.all(np.diff(left) < 0)
-    assert left[0] == pytest.approx(200.0, rel=0.01)
-    assert left[-1] < 40.0
+def test_a_high_load_washes_compression_out():
+    """The largest load yields the edge in tension, and letting go yields it back."""
+    left = [float(surviving(-300.0, top, -300.0, *CURVE)) for top in (250.0, 500.0, 700.0, 900.0, 1200.0)]
+    assert np.all(np.diff(left) > 0)
+    assert left[0] == pytest.approx(-300.0, rel=0.01)
+    assert left[-1] > -60.0
 
 
 def test_a_deep_low_load_washes_compression_out():
     left = [float(surviving(-300.0, -100.0, low, *CURVE)) for low in (-320.0, -500.0, -700.0)]
     assert np.all(np.diff(left) > 0)
     assert left[-1] > -150.0
+
+
+def test_tension_is_the_mirror_of_compression():
+    here = float(surviving(-300.0, 700.0, -350.0, *CURVE))
+    assert float(surviving(300.0, 350.0, -700.0, *CURVE)) == pytest.approx(-here, rel=1e-12)
