@@ -10,6 +10,29 @@ SMALLEST_SHANK = 0.25
 KNIFE_EDGE = 1 / 3
 """Straight-shank depth b/t below which the edge is thin enough to be called a knife edge (common practice)."""
 
+THICKNESS_RATIO = 0.4, 2.0
+"""Span of t/r the fit is valid for."""
+
+
+def countersink_flags(depth: float, thickness: float, radius: float) -> list[str]:
+    """Return what a reader must know of the factor at a countersink, lengths in mm.
+
+    Examples
+    --------
+    >>> countersink_flags(0.9, 1.2, 2.0)
+    ['knife edge: straight shank b/t 0.25']
+    """
+    straight, ratio = 1 - depth / thickness, thickness / radius
+    flags = []
+    if straight < KNIFE_EDGE:
+        flags.append(f"knife edge: straight shank b/t {straight:.2f}")
+    if straight < SMALLEST_SHANK - 1e-9:
+        flags.append(f"countersink factor extrapolated below b/t {SMALLEST_SHANK:g}")
+    if not THICKNESS_RATIO[0] - 1e-9 <= ratio <= THICKNESS_RATIO[1] + 1e-9:
+        low, high = THICKNESS_RATIO
+        flags.append(f"countersink factor extrapolated: t/r {ratio:.2f} outside {low:g} to {high:g}")
+    return flags
+
 
 def countersink_factor(depth: ArrayLike, thickness: ArrayLike, radius: ArrayLike) -> NDArray[np.float64]:
     """Return the peak at a 100 deg countersunk hole over that at a plain one.

@@ -1,4 +1,4 @@
-"""One hole on its own: what `faying hole` tells."""
+"""One hole solved: what `faying hole` tells."""
 
 from __future__ import annotations
 
@@ -8,55 +8,12 @@ import numpy as np
 from numpy.typing import ArrayLike, NDArray
 
 from fatigue.hole.contact import Contact, PinInHole
-from fatigue.hole.edge import FRICTION_BEARING, FRICTION_BYPASS, bending_around, contact_ends, pin_in_hole, raised_loads
-from fatigue.hole.sheet import LARGEST_RATIO, Edge
+from fatigue.hole.edge import bending_around, contact_ends, pin_in_hole, raised_loads
+from fatigue.hole.one_hole import OneHole, hole_faults, hole_flags
+
+__all__ = ["HoleSummary", "OneHole", "factor_against_load", "hole_faults", "hole_flags", "hole_summary"]
 
 Array = NDArray[np.float64]
-
-
-@dataclass(frozen=True, eq=False)
-class OneHole:
-    """A hole to look into: its sheet, its pin and its loads.
-
-    Parameters
-    ----------
-    diameter, width : float
-        Hole and pitch or strip [mm].
-    edge : str
-        ``row``, ``strip`` or ``wide``.
-    end : float
-        Hole's centre to the sheet's end on the pin-load side, infinite where none is near [mm].
-    bypass, bearing, bend : float
-        Bypass load/(W t), F/(d t), nominal bending stress [MPa].
-    fit : float
-        Interference over the diameter; negative is clearance.
-    modulus, poisson, pin_modulus, pin_poisson : float
-        [MPa], -
-    friction : float
-    k_bend : float
-        Factor on the bending stress.
-    """
-
-    diameter: float
-    width: float
-    bypass: float
-    bearing: float = 0.0
-    bend: float = 0.0
-    fit: float = 0.0
-    edge: Edge = "row"
-    end: float = np.inf
-    modulus: float = 72e3
-    poisson: float = 0.33
-    pin_modulus: float = 72e3
-    pin_poisson: float = 0.33
-    friction: float = 0.0
-    k_bend: float = 1.8
-
-    @property
-    def gross_stress(self) -> float:
-        """Stress on the gross section of the more loaded side; the bearing stress where that carries nothing [MPa]."""
-        gross = self.bypass + self.bearing * (0.0 if self.edge == "wide" else self.diameter / self.width)
-        return gross if gross else self.bearing
 
 
 @dataclass(frozen=True, eq=False)
@@ -161,7 +118,14 @@ def factor_against_load(hole: OneHole, fits: ArrayLike, shares: ArrayLike) -> Ar
     -------
     ndarray, shape (f, n)
         The largest over the edge, 45 to 135 deg, bending left out.
+
+    Raises
+    ------
+    ValueError
+        Without any load.
     """
+    if not hole.gross_stress:
+        raise ValueError("a factor needs a load to stand on")
     ready, share = _ready(hole), np.asarray(shares, dtype=np.float64)
     passing, raised = _loads(hole)
     out = []
@@ -170,22 +134,6 @@ def factor_against_load(hole: OneHole, fits: ArrayLike, shares: ArrayLike) -> Ar
         hoop = ready.solve(passing * levels, raised * levels, float(fit)).hoop[:, 45:136]
         out.append((hoop[1:] - hoop[0]).max(axis=1) / (hole.gross_stress * share))
     return np.asarray(out)
-
-
-def hole_flags(hole: OneHole) -> list[str]:
-    """Return what a reader must know before trusting the answer."""
-    ratio = hole.diameter / hole.width
-    flags = []
-    if hole.edge != "wide" and ratio > LARGEST_RATIO:
-        flags.append(f"d/W {ratio:.2f} is beyond the {LARGEST_RATIO:g} checked")
-    if hole.end < 1.5 * hole.diameter:
-        flags.append(f"end distance {hole.end / hole.diameter:.1f} d is under the 1.5 d checked")
-    if hole.friction > 0:
-        flags.append(
-            "friction is not solved but a stated multiplier: "
-            f"1 + {FRICTION_BEARING:g} x coefficient on the pin's part, 1 + {FRICTION_BYPASS:g} x on the bypass"
-        )
-    return flags
 
 
 def _ready(hole: OneHole) -> PinInHole:

@@ -5,7 +5,7 @@ from fatigue.hole.installed import installed
 from fatigue.hole.relaxation import settle
 from fatigue.hole.ring import Metal
 from fatigue.hole.squeeze import head_ratio_of_force, hole_expansion, squeeze_force, squeezed
-from fatigue.hole.summary import OneHole, factor_against_load, hole_summary
+from fatigue.hole.summary import OneHole, factor_against_load, hole_faults, hole_summary
 
 SHEET = Metal(72.4e3, 0.33, 324.0)
 
@@ -47,6 +47,27 @@ def test_flags():
     assert "end distance 1.2 d is under the 1.5 d checked" in flags
     assert "friction is not solved" in flags
     assert hole_summary(OneHole(diameter=4, width=20, bypass=60)).flags == ()
+
+
+def test_all_faults_at_once():
+    assert hole_faults(OneHole(diameter=4, width=20, bypass=60, bearing=200, end=8.0)) == []
+    wrong = OneHole(
+        diameter=4, width=3, bypass=np.nan, end=1.0, fit=0.3, modulus=0.0, poisson=0.6, pin_modulus=-1.0, friction=2.0
+    )
+    told = [str(fault) for fault in hole_faults(wrong)]
+    assert [text.split(":")[0] for text in told] == [
+        "modulus", "pin_modulus", "pitch", "end", "poisson", "friction", "fit", "bypass",
+    ]  # fmt: skip
+    assert (
+        told[2]
+        == "pitch: 3 given; it must exceed the hole's diameter 4 mm. Holes this close leave no sheet between them."
+    )
+    assert "30 given; fits lie from -10 to 10 %." in told[6]
+
+
+def test_factor_needs_a_load():
+    with pytest.raises(ValueError, match="needs a load"):
+        factor_against_load(OneHole(diameter=4, width=20, bypass=0), [0.0], [1.0])
 
 
 def test_factor_against_load():
