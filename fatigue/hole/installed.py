@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 
 from fatigue.hole.ring import Metal, expand
@@ -95,9 +96,11 @@ def installed(
     nominal = fit or 0.0
     if not SMALLEST_FIT <= nominal <= LARGEST_FIT:
         flags.append(f"fit {100 * nominal:g} % outside the {100 * SMALLEST_FIT:g} to {100 * LARGEST_FIT:g} % checked")
-    if cold_expansion == 0 and nominal <= 0:
+    shrink = (1 - pin_poisson) / pin_modulus
+    pressure = nominal / ((1 + sheet.poisson) / sheet.modulus + shrink)
+    if cold_expansion == 0 and pressure <= sheet.yield_stress / math.sqrt(3):
         return Installed(nominal, 0.0, nominal, 1.0, tuple(flags))
-    ring = expand(sheet, cold_expansion, max(nominal, 0.0), (1 - pin_poisson) / pin_modulus)
+    ring = expand(sheet, cold_expansion, max(nominal, 0.0), shrink)
     if nominal > 0 and ring.retained_fit < 0.995 * nominal:
         flags.append(f"the hole yields: fit {100 * nominal:.2f} % presses like {100 * ring.retained_fit:.2f} %")
     kept = ring.retained_fit if nominal > 0 else nominal
