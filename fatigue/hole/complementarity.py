@@ -43,6 +43,10 @@ class UnilateralContact:
         Gap per load.
     resultant : ndarray, shape (q,)
         Force along the line per load.
+
+    References
+    ----------
+    Exchange of single points: Murty 1974; key ``murty-1974``.
     """
 
     def __init__(self, compliance: Array, lever: Array, loads: Array, resultant: Array) -> None:

@@ -241,6 +241,49 @@ def contact_ends(contact: Contact) -> tuple[Array, Array]:
     return first, last
 
 
+@dataclass(frozen=True, eq=False)
+class Worth:
+    """What a filled hole makes of the stress at each point of its edge over the whole span of load, shape (L, T).
+
+    Parameters
+    ----------
+    range_factor : ndarray
+        Range of hoop stress over that of the untreated peak.
+    mean_shift : ndarray
+        Its middle less that of the untreated peak [MPa].
+    """
+
+    range_factor: Array
+    mean_shift: Array
+
+
+def worth(hoop: Array, untreated: Array) -> Worth:
+    """Compare an edge map with the untreated peak of the same locations.
+
+    Parameters
+    ----------
+    hoop : ndarray, shape (L, T, n)
+        Edge map at the levels [MPa].
+    untreated : ndarray, shape (L, n)
+        Peak by route `none` at the same levels [MPa].
+
+    Returns
+    -------
+    Worth
+
+    Examples
+    --------
+    >>> import numpy as np
+    >>> result = worth(np.array([[[50.0, 200.0]]]), np.array([[0.0, 300.0]]))
+    >>> float(result.range_factor[0, 0]), float(result.mean_shift[0, 0])
+    (0.5, -25.0)
+    """
+    high, low = hoop.max(axis=2), hoop.min(axis=2)
+    top, bottom = untreated.max(axis=1)[:, None], untreated.min(axis=1)[:, None]
+    span = np.where(top > bottom, top - bottom, np.nan)
+    return Worth(np.asarray((high - low) / span), np.asarray((high + low - top - bottom) / 2))
+
+
 def uncredited(fit: ArrayLike) -> Array:
     """Return the fit to map with when no credit is taken: min(fit, 0).
 

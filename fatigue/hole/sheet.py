@@ -30,6 +30,8 @@ ROW_REACH = 5.0
 """Length of sheet whose sideways contraction a row of holes shares, in pitches."""
 LARGEST_RATIO = 0.6
 """Largest d/W the collocation was checked for."""
+LARGEST_SOLVED = 0.75
+"""Largest d/W that is collocated; beyond, its answers are held on net section, which the caller must flag."""
 SMALLEST_RATIO = 0.02
 """Below this d/W the sheet is taken as wide."""
 NEAR_END = 0.2
@@ -117,7 +119,7 @@ def sheet_edge(edge: Edge, width_ratio: float, end_ratio: float, poisson: float)
         ``strip``: free sides; ``row``: equal holes either side, so that the lines midway stay straight and free of
         shear; ``wide``.
     width_ratio : float
-        d/W, the pitch for a row. Checked to 0.6.
+        d/W, the pitch for a row. Checked to 0.6; beyond 0.75 held on net section.
     end_ratio : float
         Distance from the hole's centre to the sheet's end on the pin-load side over d; the bypass leaves evenly
         through it. Infinite where no end is near.
@@ -153,6 +155,8 @@ def sheet_edge(edge: Edge, width_ratio: float, end_ratio: float, poisson: float)
         raise ValueError(f"end_ratio must exceed 0.5, not {end_ratio}")
     if edge == "wide" or (width_ratio < SMALLEST_RATIO and np.isinf(end_ratio)):
         return wide_sheet(poisson)
+    if width_ratio > LARGEST_SOLVED:
+        return _scaled(sheet_edge(edge, LARGEST_SOLVED, end_ratio, poisson), (1 - LARGEST_SOLVED) / (1 - width_ratio))
     if width_ratio * end_ratio < NEAR_END:
         # the end is near and the sides far: what the end adds hardly depends on them
         narrow = NEAR_END / end_ratio
@@ -162,6 +166,17 @@ def sheet_edge(edge: Edge, width_ratio: float, end_ratio: float, poisson: float)
         )
         return _sum_of(far, with_end, without)
     return _Collocation(edge, width_ratio, end_ratio, poisson).solved()
+
+
+def _scaled(sheet: SheetEdge, factor: float) -> SheetEdge:
+    return SheetEdge(
+        opening_remote=factor * sheet.opening_remote,
+        hoop_remote=factor * sheet.hoop_remote,
+        opening_pressure=factor * sheet.opening_pressure,
+        hoop_pressure=factor * sheet.hoop_pressure,
+        poisson=sheet.poisson,
+        residual=factor * sheet.residual,
+    )
 
 
 def _sum_of(far: SheetEdge, with_end: SheetEdge, without: SheetEdge) -> SheetEdge:

@@ -64,6 +64,14 @@ def test_near_end_in_a_wide_sheet_joins_smoothly():
     assert below.cosine_bearing_factor == pytest.approx(above.cosine_bearing_factor, rel=3e-3)
 
 
+@pytest.mark.parametrize("edge", ["row", "strip"])
+def test_held_on_net_section_beyond_what_is_solved(edge):
+    """Continuous, and growing as the net section shrinks."""
+    edges = [sheet_edge(edge, x, np.inf, 0.33).open_factor for x in (0.75, 0.7501, 0.95)]
+    assert edges[1] == pytest.approx(edges[0], rel=1e-3)
+    assert edges[2] == pytest.approx(5 * edges[0], rel=1e-9)
+
+
 def test_impossible_geometry_is_refused():
     with pytest.raises(ValueError, match="width_ratio"):
         sheet_edge("row", 1.0, np.inf, 0.33)
