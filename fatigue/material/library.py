@@ -1,21 +1,22 @@
-"""The shipped materials, fasteners and S-N families, and curve files of the user's own."""
+"""The shipped materials, fasteners, S-N families and strain-life constants, and curve files of the user's own."""
 
 from __future__ import annotations
 
-import math
 import tomllib
-from collections.abc import Iterator
 from functools import cache
 from importlib import resources
 from pathlib import Path
 from typing import Any
 
-from fatigue.material.curves import CurveFamily, Member
+from fatigue.material.curve_file import parse_family
+from fatigue.material.curves import CurveFamily
 from fatigue.material.records import Fastener, Material
-from spectra.faults import Fault, InputFaults, did_you_mean, show
-from spectra.units import to_si
+from fatigue.material.strain import StrainLife
+from spectra.faults import Fault, InputFaults, did_you_mean, listed
 
 DATA = resources.files("fatigue.material.data")
+TABLES = ("materials.toml", "fasteners.toml", "strain-life.toml")
+"""Files of the data folder that are not S-N families."""
 
 
 @cache
@@ -26,11 +27,8 @@ def _table(name: str) -> dict[str, dict[str, Any]]:
 @cache
 def _curve_files() -> dict[str, str]:
     """Return the file of each shipped family by the family's name."""
-    found = {}
-    for entry in sorted(DATA.iterdir(), key=lambda entry: entry.name):
-        if entry.name.endswith("-sheet.toml"):
-            found[str(_table(entry.name)["name"])] = entry.name
-    return found
+    files = sorted(entry.name for entry in DATA.iterdir() if entry.name.endswith(".toml") and entry.name not in TABLES)
+    return {str(_table(name)["name"]): name for name in files}
 
 
 def materials() -> tuple[str, ...]:
@@ -48,6 +46,11 @@ def families() -> tuple[str, ...]:
     return tuple(_curve_files())
 
 
+def strain_lives() -> tuple[str, ...]:
+    """Return the names of the shipped strain-life constants."""
+    return tuple(_table("strain-life.toml"))
+
+
 def material(name: str) -> Material:
     """Return a shipped material.
 
@@ -63,9 +66,12 @@ def material(name: str) -> Material:
         poisson=entry["poisson"],
         yield_stress=entry["yield_MPa"],
         ultimate=entry["ultimate_MPa"],
-        curve=entry["curve"],
+        curve=entry.get("curve", ""),
         source=entry["source"],
         how=entry["how"],
+        form=entry["form"],
+        strain_life=entry.get("strain_life", ""),
+        note=entry.get("note", ""),
     )
 
 
@@ -85,6 +91,51 @@ def fastener(name: str) -> Fastener:
         poisson=entry["poisson"],
         source=entry["source"],
         how=entry["how"],
+        alloy=entry["alloy"],
+    )
+
+
+def strain_life(name: str) -> StrainLife:
+    """Return shipped strain-life constants.
+
+    Raises
+    ------
+    InputFaults
+        If there are none of that name, or none at all (an empty name).
+
+    Examples
+    --------
+    >>> strain_life("2024-T351").strength_coefficient
+    1100.0
+    """
+    if name not in strain_lives():
+        given = f'no strain-life constants "{name}".' if name else "the material has no strain-life constants."
+        hint = f"{did_you_mean(name, strain_lives())} " if name else ""
+        raise InputFaults(
+            "strain_life",
+            [
+                Fault(
+                    "",
+                    given,
+                    f"{hint}The local-strain life needs E, sf', b, ef', c, K' and n'; shipped are "
+                    f"{listed(strain_lives(), 'and')}. Name one of them, or use the notched family.",
+                )
+            ],
+        )
+    entry = _table("strain-life.toml")[name]
+    return StrainLife(
+        name=name,
+        modulus=float(entry["modulus_MPa"]),
+        strength_coefficient=float(entry["strength_coefficient_MPa"]),
+        strength_exponent=float(entry["strength_exponent"]),
+        ductility_coefficient=float(entry["ductility_coefficient"]),
+        ductility_exponent=float(entry["ductility_exponent"]),
+        cyclic_strength=float(entry["cyclic_strength_MPa"]),
+        cyclic_exponent=float(entry["cyclic_exponent"]),
+        walker=float(entry["walker"]),
+        source=entry["source"],
+        how=entry["how"],
+        walker_source=entry["walker_source"],
     )
 
 
@@ -103,9 +154,19 @@ def family(name: str, folder: Path = Path()) -> CurveFamily:
     InputFaults
         If the file cannot be read or has faults: all of them.
     """
-    shipped = _curve_files()
-    if name in shipped:
-        return parse_family(_table(shipped[name]), shipped[name])
+    if not name:
+        raise InputFaults(
+            "curve",
+            [
+                Fault(
+                    "",
+                    "the material has no S-N family: none was found with constants that could be defended.",
+                    'Give your own: [material."..."] with curve = "your-file.toml"; `faying fit` makes one from tests.',
+                )
+            ],
+        )
+    if name in _curve_files():
+        return _shipped(name)
     path = folder / name
     try:
         raw = tomllib.loads(path.read_bytes().decode("utf-8"))
@@ -113,85 +174,13 @@ def family(name: str, folder: Path = Path()) -> CurveFamily:
         raise InputFaults(str(path), [Fault("", f"the curve file cannot be read ({error.strerror}).")]) from None
     except (tomllib.TOMLDecodeError, UnicodeDecodeError, RecursionError) as error:
         raise InputFaults(str(path), [Fault("", f"not a valid TOML file: {error}.")]) from None
-    return parse_family(raw, str(path))
+    return parse_family(raw, str(path), _shipped)
 
 
-TEXTS = ("name", "alloy", "source", "how")
-PAIRS = ("tested_cycles", "tested_ratio")
-CONSTANTS = ("kt", "A1", "A2", "A3", "A4")
-
-
-def parse_family(raw: dict[str, Any], source: str) -> CurveFamily:
-    """Check a curve file's tables and turn them into a family with constants for MPa."""
-    faults = list(_family_faults(raw))
-    if faults:
-        raise InputFaults(source, faults)
-    factor = to_si(1.0, raw["stress_unit"])
-    members = [
-        Member(
-            kt=float(entry["kt"]),
-            # log10(c s) = log10 c + log10 s: the unit goes into A1 and A4 once
-            a1=entry["A1"] - entry["A2"] * math.log10(factor),
-            a2=float(entry["A2"]),
-            a3=float(entry["A3"]),
-            a4=entry["A4"] * factor,
-            figure=entry.get("figure", ""),
-        )
-        for entry in sorted(raw["member"], key=lambda entry: float(entry["kt"]))
-    ]
-    return CurveFamily(
-        name=raw["name"],
-        members=tuple(members),
-        tested_cycles=(float(raw["tested_cycles"][0]), float(raw["tested_cycles"][1])),
-        tested_ratio=(float(raw["tested_ratio"][0]), float(raw["tested_ratio"][1])),
-        source=raw["source"],
-        how=raw["how"],
-    )
-
-
-def _family_faults(raw: dict[str, Any]) -> Iterator[Fault]:
-    known = (*TEXTS, "stress_unit", *PAIRS, "member")
-    for key in raw:
-        if key not in known:
-            yield Fault(key, "is not a key of a curve file.", did_you_mean(key, known))
-    for key in TEXTS:
-        if not isinstance(raw.get(key), str):
-            yield Fault(key, "is missing or not text.", f'Write {key} = "...".')
-    if raw.get("stress_unit") not in ("ksi", "MPa"):
-        yield Fault("stress_unit", f"{show(raw.get('stress_unit'))} must be one of ksi and MPa.")
-    for key in PAIRS:
-        pair = raw.get(key)
-        if not (isinstance(pair, list) and len(pair) == 2 and all(map(_number, pair)) and pair[0] < pair[1]):
-            yield Fault(key, f"{show(pair)} must be two rising numbers.", f"Write {key} = [first, last].")
-    pair = raw.get("tested_cycles")
-    if isinstance(pair, list) and len(pair) == 2 and all(map(_number, pair)) and not 1 <= pair[0] < pair[1] <= 1e15:
-        yield Fault("tested_cycles", f"{show(pair)} must lie within 1 and 1e15.")
-    members = raw.get("member")
-    if not (isinstance(members, list) and members and all(isinstance(entry, dict) for entry in members)):
-        yield Fault("member", "is missing.", "Give one [[member]] table for each K_t.")
-        return
-    kts = []
-    for position, entry in enumerate(members, start=1):
-        yield from _member_faults(entry, f"member[{position}]")
-        if _number(entry.get("kt")):
-            kts.append(entry["kt"])
-    if len(set(kts)) < len(kts):
-        yield Fault("member", "two members have the same kt.", "Keep one for each K_t.")
-
-
-def _member_faults(entry: dict[str, Any], where: str) -> Iterator[Fault]:
-    known = (*CONSTANTS, "figure")
-    for key in entry:
-        if key not in known:
-            yield Fault(f"{where}.{key}", "is not a key of a member.", did_you_mean(key, known))
-    limits = {"kt": (1, 100), "A1": (-1e3, 1e3), "A2": (-1e3, -1e-3), "A3": (0, 1), "A4": (0, 1e4)}
-    for key, (least, most) in limits.items():
-        value = entry.get(key)
-        if not _number(value) or not least <= value <= most:
-            yield Fault(f"{where}.{key}", f"{show(value)} must be a number from {least:g} to {most:g}.")
-
-
-def _number(value: Any) -> bool:
-    return isinstance(value, int | float) and not isinstance(value, bool) and math.isfinite(value)
-
-
+@cache
+def _shipped(name: str) -> CurveFamily:
+    """Return a shipped family; the KeyError for an unknown name also carries the known ones."""
+    files = _curve_files()
+    if name not in files:
+        raise KeyError(name, families())
+    return parse_family(_table(files[name]), files[name], _shipped)

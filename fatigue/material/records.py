@@ -23,6 +23,12 @@ class Material:
         Name of the S-N family, or path of a curve file.
     source, how : str
         Where the values stand, and how they were obtained.
+    form : str
+        Product and thickness the values hold for.
+    strain_life : str
+        Name of the strain-life constants; empty where there are none.
+    note : str
+        What the reader must know before using it.
     """
 
     name: str
@@ -33,6 +39,9 @@ class Material:
     curve: str
     source: str = ""
     how: str = ""
+    form: str = ""
+    strain_life: str = ""
+    note: str = ""
 
 
 @dataclass(frozen=True)
@@ -49,6 +58,8 @@ class Fastener:
         Young's modulus of the shank [MPa].
     poisson : float
     source, how : str
+    alloy : str
+        Of the shank; what the trade knows of the kind and the shank's strength are in `fatigue.hole.kinds`.
     """
 
     name: str
@@ -57,6 +68,7 @@ class Fastener:
     poisson: float
     source: str = ""
     how: str = ""
+    alloy: str = ""
 
     @property
     def riveted(self) -> bool:
