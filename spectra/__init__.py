@@ -5,7 +5,7 @@
 array([100.,  40.])
 """
 
-from spectra.blocks import count_blocks
+from spectra.blocks import block_notes, count_blocks
 from spectra.counting import count, turning_points
 from spectra.cycles import Cycles
 from spectra.faults import Fault, InputFaults
@@ -20,6 +20,7 @@ __all__ = [
     "InputFaults",
     "Phase",
     "Spectrum",
+    "block_notes",
     "count",
     "count_blocks",
     "read_history",

@@ -46,13 +46,13 @@ def turning_points(values: ArrayLike) -> Array:
     if not np.isfinite(x).all():
         raise ValueError("values must be finite")
     if x.size < 2:
-        return x.copy()
+        return np.array(x)
     x = x[np.concatenate([[True], x[1:] != x[:-1]])]
     if x.size < 3:
-        return x
+        return np.asarray(x)
     rising = x[1:] > x[:-1]
     keep = np.concatenate([[True], rising[1:] != rising[:-1], [True]])
-    return x[keep]
+    return np.asarray(x[keep])
 
 
 def closed(points: Array) -> Array:
@@ -146,7 +146,7 @@ def _count_rest(points: Array, close: bool) -> Cycles:
     The package needs three points and alternating ones; a history of two is one half cycle.
     """
     if points.size == 2:
-        return Cycles(points.min(), points.max(), 0.5)
+        return Cycles(points.min(keepdims=True), points.max(keepdims=True), np.array([0.5]))
     rank = np.unique(points, return_inverse=True)[1].astype(np.float64)
     found = np.array([(start, end, number) for *_, number, start, end in rainflow.extract_cycles(rank)])
     first, second = points[found[:, 0].astype(np.int64)], points[found[:, 1].astype(np.int64)]

@@ -19,7 +19,16 @@ MOST_POINTS = 50_000_000
 """Most points a block may have, so that a slip in a number does not fill the memory."""
 
 FILE_KEYS = ("title", "invented", "seed", "notes", "channel", "flight", "phase")
-CHANNEL_KEYS = ("unit", "MPa_per_unit", "ksi_per_unit", "radius_mm", "radius_in", "thickness_mm", "thickness_in", "share")
+CHANNEL_KEYS = (
+    "unit",
+    "MPa_per_unit",
+    "ksi_per_unit",
+    "radius_mm",
+    "radius_in",
+    "thickness_mm",
+    "thickness_in",
+    "share",
+)
 PHASE_KEYS = ("name", "steady", "repeated", "amplitude", "cycles")
 
 
@@ -119,7 +128,9 @@ def _faults(raw: dict[str, Any]) -> Iterator[Fault]:
     if not isinstance(raw.get("title"), str) or not raw.get("title"):
         yield Fault("title", "is missing or not text.", 'Write title = "...".')
     if not _whole(raw.get("seed")) or not 0 <= raw["seed"] < 2**63:
-        yield Fault("seed", f"{show(raw.get('seed'))} must be a whole number from 0.", "It makes the sequence repeatable.")
+        yield Fault(
+            "seed", f"{show(raw.get('seed'))} must be a whole number from 0.", "It makes the sequence repeatable."
+        )
     channels = raw.get("channel")
     if not isinstance(channels, dict) or not channels:
         yield Fault("channel", "is missing.", "Give at least one [channel.NAME].")
@@ -156,7 +167,9 @@ def _faults(raw: dict[str, Any]) -> Iterator[Fault]:
         own = list(_phase_faults(entry, f"phase[{position}]", list(channels), list(kinds)))
         yield from own
         if not own:
-            points += sum(number * max(1, 2 * sum(entry.get("cycles", {}).get(kind, ()))) for kind, number in kinds.items())
+            points += sum(
+                number * max(1, 2 * sum(entry.get("cycles", {}).get(kind, ()))) for kind, number in kinds.items()
+            )
     if points > MOST_POINTS:
         yield Fault("flight", f"the block would have {points:g} points; {MOST_POINTS:g} is the most.", "Shorten it.")
 
@@ -207,7 +220,11 @@ def _phase_faults(entry: dict[str, Any], where: str, channels: list[str], kinds:
         yield Fault(where, "repeated loads need repeated, amplitude and cycles.", "Give all three or none.")
         return
     if entry["repeated"] not in channels:
-        yield Fault(f"{where}.repeated", f"{show(entry['repeated'])} is not a channel.", did_you_mean(str(entry["repeated"]), channels))
+        yield Fault(
+            f"{where}.repeated",
+            f"{show(entry['repeated'])} is not a channel.",
+            did_you_mean(str(entry["repeated"]), channels),
+        )
     levels = entry["amplitude"]
     if not isinstance(levels, list) or not levels or not all(_number(v) and v > 0 for v in levels):
         yield Fault(f"{where}.amplitude", f"{show(levels)} must be a list of positive numbers.")
@@ -222,7 +239,9 @@ def _phase_faults(entry: dict[str, Any], where: str, channels: list[str], kinds:
         if not isinstance(numbers, list) or not all(_whole(n) and n >= 0 for n in numbers):
             yield Fault(f"{where}.cycles.{kind}", f"{show(numbers)} must be whole numbers, none negative.")
         elif len(numbers) != len(levels):
-            yield Fault(f"{where}.cycles.{kind}", f"{len(numbers)} numbers for {len(levels)} amplitudes.", "Give one for each.")
+            yield Fault(
+                f"{where}.cycles.{kind}", f"{len(numbers)} numbers for {len(levels)} amplitudes.", "Give one for each."
+            )
 
 
 def _number(value: Any) -> bool:

@@ -66,8 +66,8 @@ class Spectrum:
         """Return the block as a sequence of remote gross stress.
 
         In each phase the positive and the negative half cycles are shuffled on their own and flown in turn about the
-        steady level; a phase without repeated loads is its steady level. Flights are shuffled over the block. Nothing is
-        added: the ground-air-ground cycle comes out of the counting.
+        steady level; a phase without repeated loads is its steady level. Flights are shuffled over the block. Nothing
+        is added: the ground-air-ground cycle comes out of the counting.
 
         Parameters
         ----------
