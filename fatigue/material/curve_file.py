@@ -116,14 +116,17 @@ def family_text(raw: dict[str, Any]) -> str:
     kt = 1.0
     <BLANKLINE>
     """
-    lines = [f"{key} = {json.dumps(value, ensure_ascii=False)}" for key, value in raw.items() if key != "member"]
+    lines = [f"{key} = {_written(value)}" for key, value in raw.items() if key != "member"]
     for entry in raw["member"]:
-        lines += [
-            "",
-            "[[member]]",
-            *(f"{key} = {json.dumps(value, ensure_ascii=False)}" for key, value in entry.items()),
-        ]
+        lines += ["", "[[member]]", *(f"{key} = {_written(value)}" for key, value in entry.items())]
     return "\n".join([*lines, ""])
+
+
+def _written(value: Any) -> str:
+    """Write a value as TOML; texts and numbers are the same in JSON."""
+    if isinstance(value, list) and any(isinstance(part, str) for part in value):
+        return "\n".join(["[", *(f"    {json.dumps(part, ensure_ascii=False)}," for part in value), "]"])
+    return json.dumps(value, ensure_ascii=False)
 
 
 def _scaled_family(raw: dict[str, Any], source: str, shipped: Callable[[str], CurveFamily]) -> CurveFamily:
@@ -151,9 +154,12 @@ def _family_faults(raw: dict[str, Any]) -> Iterator[Fault]:
     allowed = {"tested_cycles": (1.0, 1e15), "tested_ratio": (-1e3, 1.0)}
     for key in SPANS:
         pair: Any = raw.get(key)
-        if not (isinstance(pair, list) and len(pair) == 2 and all(map(_number, pair)) and pair[0] < pair[1]):
+        one_ratio = key == "tested_ratio"  # tests at one R have no span
+        if not (isinstance(pair, list) and len(pair) == 2 and all(map(_number, pair))) or not (
+            pair[0] < pair[1] or (one_ratio and pair[0] == pair[1])
+        ):
             yield Fault(key, f"{show(pair)} must be two rising numbers.", f"Write {key} = [first, last].")
-        elif not allowed[key][0] <= pair[0] < pair[1] <= allowed[key][1]:
+        elif not allowed[key][0] <= pair[0] <= pair[1] <= allowed[key][1]:
             yield Fault(key, f"{show(pair)} must lie within {allowed[key][0]:g} and {allowed[key][1]:g}.")
     members = raw.get("member")
     if not (isinstance(members, list) and members and all(isinstance(entry, dict) for entry in members)):

@@ -133,9 +133,11 @@ def strain_life(name: str) -> StrainLife:
         cyclic_strength=float(entry["cyclic_strength_MPa"]),
         cyclic_exponent=float(entry["cyclic_exponent"]),
         walker=float(entry["walker"]),
+        notch_length=float(entry["notch_length_mm"]),
         source=entry["source"],
         how=entry["how"],
         walker_source=entry["walker_source"],
+        notch_length_source=entry["notch_length_source"],
     )
 
 

@@ -7,6 +7,8 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
 
+from fatigue.material.two_powers import log_root
+
 Array = NDArray[np.float64]
 
 
@@ -27,8 +29,10 @@ class StrainLife:
         K' [MPa] and n' of the cyclic curve (Ramberg, Osgood).
     walker : float
         Walker's exponent gamma: 0 the maximum alone counts, 1 the amplitude alone.
+    notch_length : float
+        Peterson's length a: K_f = 1 + (K_t - 1)/(1 + a/r) [mm].
     source, how : str
-    walker_source : str
+    walker_source, notch_length_source : str
     """
 
     name: str
@@ -40,9 +44,11 @@ class StrainLife:
     cyclic_strength: float
     cyclic_exponent: float
     walker: float
+    notch_length: float
     source: str = ""
     how: str = ""
     walker_source: str = ""
+    notch_length_source: str = ""
 
 
 def cyclic_strain(stress: ArrayLike, k: StrainLife) -> Array:
@@ -101,41 +107,22 @@ def life_strain(cycles: ArrayLike, k: StrainLife, mean_stress: ArrayLike = 0.0) 
 
 
 def life_of_two_powers(target: ArrayLike, first: ArrayLike, p: float, second: ArrayLike, q: float) -> Array:
-    """Return the N at which first (2N)^p + second (2N)^q equals a target; p, q < 0.
-
-    Infinite for a target of 0 or less; also where both terms vanish.
+    """Return the N at which first (2N)^p + second (2N)^q equals a target; infinite for a target of 0 or less.
 
     Parameters
     ----------
     target, first, second : array_like
-        At least 0; broadcast.
+        At least 0, not both coefficients 0; broadcast.
     p, q : float
         Negative exponents.
-
-    Notes
-    -----
-    In logs the sum is convex and falling, so that Newton from the left, where each term alone would have ended, never
-    passes the root.
     """
-    want, a, c = np.broadcast_arrays(*(np.asarray(v, dtype=np.float64) for v in (target, first, second)))
-    with np.errstate(divide="ignore", invalid="ignore"):
-        log_want, log_a, log_c = np.log(np.maximum(want, 0.0)), np.log(np.maximum(a, 0.0)), np.log(np.maximum(c, 0.0))
-        x = np.maximum((log_want - log_a) / p, (log_want - log_c) / q)
-    solvable = np.isfinite(x)
-    x = np.where(solvable, x, 0.0)
-    log_a, log_c, log_want = (np.where(solvable, v, -1e300) for v in (log_a, log_c, log_want))
-    for _ in range(50):
-        one, two = log_a + p * x, log_c + q * x
-        larger = np.maximum(one, two)
-        part = np.exp(np.minimum(one, two) - larger)
-        share = np.where(one >= two, 1.0, part) / (1.0 + part)
-        move = (larger + np.log1p(part) - log_want) / (p * share + q * (1.0 - share))
-        move = np.where(solvable, move, 0.0)
-        x = x - move
-        if np.abs(move).max(initial=0.0) < 1e-12:
-            break
-    out = np.where(solvable, np.exp(np.minimum(x, 690.0)) / 2.0, np.inf)
-    return np.asarray(np.where(want > 0.0, out, np.inf))
+    want = np.asarray(target, dtype=np.float64)
+    damaging = want > 0.0
+    with np.errstate(divide="ignore"):
+        log_first, log_second = np.log(first), np.log(second)
+    log_reversals = log_root(log_first, p, log_second, q, np.log(np.where(damaging, want, 1.0)))
+    with np.errstate(over="ignore"):
+        return np.asarray(np.where(damaging, np.exp(log_reversals) / 2.0, np.inf))
 
 
 def life_at_strain(amplitude: ArrayLike, k: StrainLife, mean_stress: ArrayLike = 0.0) -> Array:
