@@ -58,7 +58,12 @@ def stress_flags(splice: Splice, joint: Joint, local: LocalStress) -> list[list[
 
 
 def curve_flags(
-    curves: LocationCurves, low: Array, high: Array, by_cycle: Array, recounted: Array, folded: Array
+    curves: LocationCurves,
+    low: Array,
+    high: Array,
+    by_cycle: Array,
+    recounted: NDArray[np.bool_],
+    folded: NDArray[np.bool_],
 ) -> list[list[str]]:
     """Return each location's flags on its S-N curve and its counting, by location."""
     total = by_cycle.sum(axis=1)

@@ -175,7 +175,9 @@ def location_curves(case: Case, local: LocalStress, cycles: Cycles) -> LocationC
         severity = np.array(local.factors.k_bypass)
     else:
         severity = np.abs(at_high - at_low) / (local.net_per_stress * (high - low))
-    by_location: list[CurveFamily] = [case.families[case.splice.sheets[s].material.name] for _, s in case.splice.locations]
+    by_location: list[CurveFamily] = [
+        case.families[case.splice.sheets[s].material.name] for _, s in case.splice.locations
+    ]
     return stacked([family.at([k0], case.life.tail) for family, k0 in zip(by_location, severity, strict=True)])
 
 

@@ -138,6 +138,8 @@ class Row:
         1 the heads hold the shank straight, 0 a free pin.
     slack : float
         Movement of the fastener before it takes load [mm].
+    friction_share : float
+        Share of the row's load that the clamped faces carry past its fasteners: off their bearing stress.
     """
 
     name: str
@@ -150,6 +152,7 @@ class Row:
     flexibility: float | None = None
     head_fixity: float = 1.0
     slack: float = 0.0
+    friction_share: float = 0.0
 
 
 @dataclass(frozen=True)

@@ -102,9 +102,7 @@ def none_safe(values: Array) -> Array:
     return np.where(values == 0.0, 1.0, values)
 
 
-def neighbour_lives(
-    case: Case, curves: LocationCurves, own: RouteResult, loads: CountedLoads
-) -> tuple[Array, Array]:
+def neighbour_lives(case: Case, curves: LocationCurves, own: RouteResult, loads: CountedLoads) -> tuple[Array, Array]:
     """Return the lives at the family's members on either side of each severity: the model's own spread."""
     lives = []
     for kt in curves.neighbours:

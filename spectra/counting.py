@@ -1,103 +1,77 @@
-"""Rainflow counting (ASTM E1049-85): turning points, nested cycles peeled off, the rest left to `rainflow`.
+"""Rainflow counting (ASTM E1049-85): nested cycles peeled off in passes, deep nests closed, the rest to `rainflow`.
 
-Counting only compares values: a pair of neighbouring turning points that lies within its two outer neighbours is a
-cycle, and taking it out changes nothing else. All such pairs are therefore taken out at once, pass after pass, with
-array operations; what no pass can shorten any more (deep nests, the diverging-converging residue) goes to the package.
+Counting only compares values, and a cycle that is nested between its neighbours can be taken out at any time without
+changing another. So a history may be cut anywhere, its parts counted on their own in any order, and what is left of
+them joined and counted on: `count_part`, `join_parts`, `finish`. `count` does just that with parts that fit the cache.
 """
 
 from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
 
 import numpy as np
 import rainflow
 from numpy.typing import ArrayLike, NDArray
 
 from spectra.cycles import Cycles, joined
+from spectra.nests import close_nests
+from spectra.peeling import Pairs, peel
+from spectra.turning import finite, interleaved, peaks_and_valleys, separated, turning_points
 
 Array = NDArray[np.float64]
 
-LEAST_YIELD = 0.02
-"""Share of the points a pass must remove for another pass to pay."""
+CHUNK = 1 << 16
+"""Values counted at a time: half a megabyte stays in the cache."""
+FEW = 1024
+"""Points few enough to be left to the `rainflow` package."""
 
 
-def turning_points(values: ArrayLike) -> Array:
-    """Return the first value, every reversal and the last value.
+@dataclass(frozen=True, eq=False)
+class Part:
+    """A stretch of history, counted as far as it can be on its own.
 
     Parameters
     ----------
-    values : array_like, shape (n,)
-        Finite.
+    cycles : Cycles
+        Closed within the stretch.
+    residue : ndarray
+        The turning points left, the stretch's first and last value among them.
+    """
 
-    Returns
-    -------
-    ndarray, shape (k,)
-        Neighbours differ, and directions alternate.
+    cycles: Cycles
+    residue: Array
+
+
+def count_part(values: ArrayLike) -> Part:
+    """Count a stretch of history as far as it can be on its own.
 
     Raises
     ------
     ValueError
         If a value is not finite.
+    """
+    pairs, rest = _reduced(finite(values))
+    return Part(_cycles(pairs), rest)
+
+
+def join_parts(parts: Sequence[Part]) -> Part:
+    """Join stretches that follow each other: the same as counting them as one.
 
     Examples
     --------
-    >>> turning_points([0, 1, 1, 2, -1])
-    array([ 0.,  2., -1.])
+    >>> halves = [count_part([0, 5, 2]), count_part([3, 1, 9])]
+    >>> whole = join_parts(halves)
+    >>> whole.cycles.low, whole.cycles.high, whole.residue
+    (array([2., 1.]), array([3., 5.]), array([0., 9.]))
     """
-    x = np.asarray(values, dtype=np.float64).reshape(-1)
-    if not np.isfinite(x).all():
-        raise ValueError("values must be finite")
-    if x.size < 2:
-        return np.array(x)
-    x = x[np.concatenate([[True], x[1:] != x[:-1]])]
-    if x.size < 3:
-        return np.asarray(x)
-    rising = x[1:] > x[:-1]
-    keep = np.concatenate([[True], rising[1:] != rising[:-1], [True]])
-    return np.asarray(x[keep])
+    pairs, rest = _reduced(np.concatenate([np.empty(0), *(part.residue for part in parts)]))
+    return Part(joined([*(part.cycles for part in parts), _cycles(pairs)]), rest)
 
 
-def closed(points: Array) -> Array:
-    """Return a repeating block's turning points, begun and ended at its largest value."""
-    if points.size < 2:
-        return points
-    top = int(np.argmax(points))
-    return turning_points(np.concatenate([points[top:], points[: top + 1]]))
-
-
-def peel(points: Array) -> tuple[Cycles, Array]:
-    """Take nested cycles out of turning points until a pass no longer pays.
-
-    Parameters
-    ----------
-    points : ndarray
-        Turning points.
-
-    Returns
-    -------
-    cycles : Cycles
-        Those taken out, each once.
-    rest : ndarray
-        Turning points of what remains: its cycles are those still to count.
-    """
-    found: list[Cycles] = []
-    x = points
-    while x.size >= 4:
-        a, b, c, d = x[:-3], x[1:-2], x[2:-1], x[3:]
-        nested = np.where(c > b, (c <= a) & (d <= b), (c >= a) & (d >= b))
-        start = np.flatnonzero(nested)
-        if start.size:
-            # neighbours in a run share a point: take every second of the run
-            run = np.concatenate([[True], np.diff(start) > 1])
-            position = np.arange(start.size)
-            in_run = position - np.maximum.accumulate(np.where(run, position, 0))
-            start = start[in_run % 2 == 0]
-        if start.size < max(1.0, LEAST_YIELD * x.size):
-            break
-        first, second = x[start + 1], x[start + 2]
-        found.append(Cycles(np.minimum(first, second), np.maximum(first, second), np.ones(start.size)))
-        keep = np.ones(x.size, dtype=bool)
-        keep[start + 1] = keep[start + 2] = False
-        x = x[keep]
-    return joined(found), x
+def finish(part: Part, close: bool = True) -> Cycles:
+    """Return all cycles of a history given as one part: those closed, and those of its residue."""
+    return joined([part.cycles, _count_rest(part.residue, close)])
 
 
 def count(values: ArrayLike, close: bool = True) -> Cycles:
@@ -114,7 +88,7 @@ def count(values: ArrayLike, close: bool = True) -> Cycles:
     Returns
     -------
     Cycles
-        In the order found.
+        Not joined and in no order: see `Cycles.merged`.
 
     Raises
     ------
@@ -131,25 +105,66 @@ def count(values: ArrayLike, close: bool = True) -> Cycles:
     >>> sorted(table.range.tolist())
     [3.0, 4.0, 7.0, 9.0]
     """
-    points = turning_points(values)
-    if close:
-        points = closed(points)
-    if points.size < 2:
-        return joined([])
-    cycles, rest = peel(points)
-    return joined([cycles, _count_rest(rest, close)])
+    x = np.asarray(values).reshape(-1)
+    pairs: list[Pairs] = []
+    rests: list[Array] = []
+    for start in range(0, x.size, CHUNK):
+        found, peaks, valleys = peel(*peaks_and_valleys(finite(x[start : start + CHUNK])))
+        pairs += found
+        rests.append(interleaved(peaks, valleys))
+    rest = np.concatenate([np.empty(0), *rests])
+    if len(rests) > 1:
+        rest = turning_points(rest)
+    if rest.size > FEW:
+        found, rest = _reduced(rest)
+        pairs += found
+    return joined([_cycles(pairs), _count_rest(rest, close)])
+
+
+def _reduced(x: Array) -> tuple[list[Pairs], Array]:
+    """Take every nested cycle out of a finite sequence."""
+    pairs, peaks, valleys = peel(*peaks_and_valleys(x))
+    nested, rest = close_nests(interleaved(peaks, valleys))
+    return pairs + nested, rest
+
+
+def _cycles(pairs: list[Pairs]) -> Cycles:
+    low = np.concatenate([np.empty(0), *(low for low, _ in pairs)])
+    high = np.concatenate([np.empty(0), *(high for _, high in pairs)])
+    return Cycles(low, high, np.ones(low.size))
 
 
 def _count_rest(points: Array, close: bool) -> Cycles:
-    """Count what is left with the `rainflow` package, on ranks: exact ties, no underflow of differences.
+    """Count what is left of a history, turning points of any kind."""
+    if close and points.size > 1:
+        top = int(np.argmax(points))
+        points = turning_points(np.concatenate([points[top:], points[: top + 1]]))
+    if points.size < 2:
+        return joined([])
+    if 2 < points.size <= FEW:
+        rest = _by_rainflow(points)
+    else:
+        pairs, residue = _reduced(points)
+        low, high = np.minimum(residue[1:], residue[:-1]), np.maximum(residue[1:], residue[:-1])
+        rest = joined([_cycles(pairs), Cycles(low, high, np.full(low.size, 0.5))])
+    # a closed history ends in half cycles that come twice, down and up: whole ones
+    return rest.merged() if close else rest
 
-    The package needs three points and alternating ones; a history of two is one half cycle.
+
+def _by_rainflow(points: Array) -> Cycles:
+    """Count with the `rainflow` package, on ranks: exact ties, and no difference can underflow.
+
+    The package needs at least three points; it gives nothing for two.
     """
-    if points.size == 2:
-        return Cycles(points.min(keepdims=True), points.max(keepdims=True), np.array([0.5]))
     rank = np.unique(points, return_inverse=True)[1].astype(np.float64)
-    found = np.array([(start, end, number) for *_, number, start, end in rainflow.extract_cycles(rank)])
+    found = np.array([(start, end, number) for *_, number, start, end in rainflow.extract_cycles(rank.tolist())])
     first, second = points[found[:, 0].astype(np.int64)], points[found[:, 1].astype(np.int64)]
-    cycles = Cycles(np.minimum(first, second), np.maximum(first, second), found[:, 2])
-    # a closed history ends in the same half cycle twice, up and down: one cycle
-    return cycles.merged() if close else cycles
+    return Cycles(np.minimum(first, second), np.maximum(first, second), found[:, 2])
+
+
+def residue(values: ArrayLike) -> Array:
+    """Return the turning points left when every nested cycle of a history is taken out."""
+    return count_part(values).residue
+
+
+__all__ = ["Part", "count", "count_part", "finish", "join_parts", "residue", "separated", "turning_points"]

@@ -87,7 +87,10 @@ def parse_case(text: str, source: str, folder: Path) -> Case:
     if faults:
         raise InputFaults(source, faults)
     # nothing is None from here on: a table with faults of its own has been reported
-    assert tables.loads and tables.splice and tables.life and tables.inspection
+    assert tables.loads is not None
+    assert tables.splice is not None
+    assert tables.life is not None
+    assert tables.inspection is not None
     splice = _splice(tables, tables.splice)
     faults += joint_faults(splice)
     families: dict[str, CurveFamily] = {}
@@ -127,6 +130,8 @@ def _splice(tables: Tables, table: schema.SpliceTable) -> Splice:
         last = row_names.index(sheet.to_row) if sheet.to_row else len(rows) - 1
         comes_in, goes_on = _ends(table.kind, sheet.role, index, len(sheets))
         end_row = rows[first] if goes_on != "free" else rows[last]
+        # where nothing else is said, a butted sheet runs up to the butt line
+        butted = table.to_centre_mm if goes_on == "free" and comes_in == "loaded" else None
         return Sheet(
             name=sheet.name,
             material=materials.get(sheet.material) or library.material(sheet.material),
@@ -136,7 +141,7 @@ def _splice(tables: Tables, table: schema.SpliceTable) -> Splice:
             start=comes_in,
             end=goes_on,
             role=sheet.role or "",
-            edge=sheet.edge_mm or end_row.edge_mm or edge_default or 2.0 * end_row.hole_mm,
+            edge=sheet.edge_mm or end_row.edge_mm or edge_default or butted or 2.0 * end_row.hole_mm,
             steps=tuple(Step(row_names.index(step.after_row), step.thickness_mm) for step in sheet.steps),
         )
 

@@ -52,13 +52,13 @@ def _loads(loads: schema.LoadsTable | None, folder: Path) -> Iterator[Fault]:
                 f"max_MPa and min_MPa are both {block.max_MPa:g}: that is no cycle.",
                 "Give two different stresses or leave the block out.",
             )
-    if loads.spectrum is not None and loads.spectrum not in spectra.shipped():
-        if not (folder / loads.spectrum).is_file():
-            yield Fault(
-                "loads.spectrum",
-                f'"{loads.spectrum}" is neither a shipped spectrum nor a file.',
-                did_you_mean(loads.spectrum, spectra.shipped()),
-            )
+    own = loads.spectrum is not None and loads.spectrum not in spectra.shipped()
+    if loads.spectrum is not None and own and not (folder / loads.spectrum).is_file():
+        yield Fault(
+            "loads.spectrum",
+            f'"{loads.spectrum}" is neither a shipped spectrum nor a file.',
+            did_you_mean(loads.spectrum, spectra.shipped()),
+        )
     if loads.factors and loads.spectrum is None:
         yield Fault("loads.factors", "factors combine the channels of a spectrum.", "Leave them out here.")
     if loads.history is not None and not (folder / loads.history.file).exists():
@@ -74,7 +74,9 @@ def _names(tables: Tables) -> Iterator[Fault]:
         seen: set[str] = set()
         for position, item in enumerate(items, start=1):
             if item is not None and item.name in seen:
-                yield Fault(f"{kind}[{position}].name", f'"{item.name}" is used twice.', f"Give each {kind} its own name.")
+                yield Fault(
+                    f"{kind}[{position}].name", f'"{item.name}" is used twice.', f"Give each {kind} its own name."
+                )
             if item is not None:
                 seen.add(item.name)
 
@@ -82,13 +84,15 @@ def _names(tables: Tables) -> Iterator[Fault]:
 def _stack(tables: Tables) -> Iterator[Fault]:
     splice = tables.splice
     if len(tables.sheets) < 2:
-        yield Fault("sheet", f"{len(tables.sheets)} given: a splice joins at least two sheets.", "Add [[sheet]] tables.")
+        yield Fault(
+            "sheet", f"{len(tables.sheets)} given: a splice joins at least two sheets.", "Add [[sheet]] tables."
+        )
     if not tables.rows:
         yield Fault("row", "no rows are given.", "Add at least one [[row]].")
     if splice is None:
         return
     roles = ROLES.get(splice.kind)
-    given = [sheet.role for sheet in tables.sheets if sheet is not None]
+    given: list[str | None] = [sheet.role for sheet in tables.sheets if sheet is not None]
     if roles is None:
         if splice.to_centre_mm is not None:
             yield Fault("splice.to_centre_mm", "a lap has no line of symmetry.", "Leave it out.")
@@ -106,12 +110,14 @@ def _stack(tables: Tables) -> Iterator[Fault]:
         if role not in roles:
             yield Fault(
                 f"sheet[{position}].role",
-                f'{role or "none"} given: the sheets of a {splice.kind} are {listed(roles)}.',
+                f"{role or 'none'} given: the sheets of a {splice.kind} are {listed(roles)}.",
                 f'Write role = "{roles[0]}" or role = "{roles[1]}".',
             )
     if len(given) == len(tables.sheets) and all(role in roles for role in given):
         if given.count(roles[0]) != 1:
-            yield Fault("sheet", f'{given.count(roles[0])} sheets have role "{roles[0]}".', "Exactly one carries the load in.")
+            yield Fault(
+                "sheet", f'{given.count(roles[0])} sheets have role "{roles[0]}".', "Exactly one carries the load in."
+            )
         elif splice.kind == "two-strap" and not 0 < given.index("main") < len(given) - 1:
             yield Fault("sheet", "a two-strap butt has its main sheet between straps.", "Order: strap, main, strap.")
 
@@ -201,7 +207,11 @@ def _sheet(sheet: schema.SheetTable, where: str, tables: Tables, folder: Path) -
     if len(order) < len(tables.rows):
         return
     unknown = False
-    ends = [("from_row", sheet.from_row), ("to_row", sheet.to_row), *(("steps", step.after_row) for step in sheet.steps)]
+    ends = [
+        ("from_row", sheet.from_row),
+        ("to_row", sheet.to_row),
+        *(("steps", step.after_row) for step in sheet.steps),
+    ]
     for key, name in ends:
         if name is not None and name not in order:
             unknown = True
@@ -217,7 +227,7 @@ def _sheet(sheet: schema.SheetTable, where: str, tables: Tables, folder: Path) -
         if not first - 1 <= place <= last:
             yield Fault(
                 f"{where}.steps",
-                f"a step after row {order[place]} lies outside the sheet, which spans rows {order[first]} to {order[last]}.",
+                f"a step after row {order[place]} lies outside the sheet: it spans {order[first]} to {order[last]}.",
                 "Move the step or the sheet's ends.",
             )
     if places != sorted(set(places)):
@@ -226,7 +236,9 @@ def _sheet(sheet: schema.SheetTable, where: str, tables: Tables, folder: Path) -
 
 def _curve(name: str, where: str, folder: Path) -> Iterator[Fault]:
     if name not in library.families() and not (folder / name).is_file():
-        yield Fault(where, f'"{name}" is neither a shipped S-N family nor a file.', did_you_mean(name, library.families()))
+        yield Fault(
+            where, f'"{name}" is neither a shipped S-N family nor a file.', did_you_mean(name, library.families())
+        )
 
 
 def _known(name: str, known: Iterable[str], where: str, what: str) -> Iterator[Fault]:

@@ -86,7 +86,7 @@ def parse_tables(raw: dict[str, Any], faults: list[Fault]) -> Tables:
         tables.title = title
         tables.echo["title"] = title
     else:
-        faults.append(Fault("title", f"{show(title)} must be text, written \"like this\"."))
+        faults.append(Fault("title", f'{show(title)} must be text, written "like this".'))
     for key, model in schema.SINGLE.items():
         if key in raw or key not in schema.REQUIRED:
             setattr(tables, key, _table(raw.get(key, {}), model, key, faults, tables.echo))
@@ -118,7 +118,8 @@ def _listed(given: Any, model: type[T], key: str, faults: list[Fault], echo: dic
     if not isinstance(given, list):
         faults.append(Fault(key, "must be an array of tables.", f"Write [[{key}]] with two brackets."))
         return []
-    parsed, copies = [], []
+    parsed: list[T | None] = []
+    copies: list[Any] = []
     for position, item in enumerate(given, start=1):
         name = item.get("name") if isinstance(item, dict) else None
         where = f"{key}[{position}]" + (f' "{name}"' if isinstance(name, str) else "")

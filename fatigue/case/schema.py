@@ -135,9 +135,7 @@ class MaterialTable(Table):
 class FastenerTable(Table):
     """`[fastener.NAME]`: the user's own fastener."""
 
-    kind: Literal[
-        "solid-rivet", "clearance-bolt", "close-fit-bolt", "interference-pin", "tapered-pin", "blind-rivet"
-    ]
+    kind: Literal["solid-rivet", "clearance-bolt", "close-fit-bolt", "interference-pin", "tapered-pin", "blind-rivet"]
     modulus_MPa: Annotated[float, Field(gt=0, le=1e7)]
     poisson: Annotated[float, Field(ge=0, lt=0.5)] = 0.33
 

@@ -15,7 +15,7 @@ from spectra.faults import Fault, InputFaults
 
 ALIKE = 2.0
 """Difference of the criterion below which two models are not told apart and the one with fewer parameters is kept
-(Burnham and Anderson 2002)."""
+(Burnham and Anderson 2002; key ``burnham-anderson-2002``)."""
 
 
 @dataclass(frozen=True, eq=False)

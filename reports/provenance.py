@@ -1,0 +1,75 @@
+"""Where every number comes from, as text for the terminal."""
+
+from __future__ import annotations
+
+from textwrap import fill
+
+import spectra
+from fatigue.material import library
+from fatigue.references import methods, references
+
+
+def sources_text(topic: str | None = None) -> str:
+    """Return the provenance of one topic, or of all."""
+    topics = {
+        "materials": _materials,
+        "fasteners": _fasteners,
+        "curves": _curves,
+        "spectra": _spectra,
+        "methods": _methods,
+    }
+    chosen = [topic] if topic else list(topics)
+    return "\n\n".join("\n".join([name.upper(), *topics[name]()]) for name in chosen)
+
+
+def _materials() -> list[str]:
+    lines = []
+    for name in library.materials():
+        m = library.material(name)
+        lines += [
+            f"  {name}: E {m.modulus:g} MPa, nu {m.poisson:g}, yield {m.yield_stress:g} MPa, "
+            f"strength {m.ultimate:g} MPa, S-N family {m.curve}",
+            f"    {m.source} [{m.how}]",
+        ]
+    return lines
+
+
+def _fasteners() -> list[str]:
+    lines = []
+    for name in library.fasteners():
+        f = library.fastener(name)
+        lines += [f"  {name}: {f.kind}, E {f.modulus:g} MPa, nu {f.poisson:g}", f"    {f.source} [{f.how}]"]
+    return lines
+
+
+def _curves() -> list[str]:
+    lines = []
+    for name in library.families():
+        family = library.family(name)
+        lines += [
+            f"  {name}: {family.source} [{family.how}]",
+            f"    tested N {family.tested_cycles[0]:g} to {family.tested_cycles[1]:g}, "
+            f"R {family.tested_ratio[0]:g} to {family.tested_ratio[1]:g}; constants for MPa:",
+        ]
+        lines += [
+            f"    K_t {m.kt:<4g} A1 {m.a1:7.4f}  A2 {m.a2:6.3f}  A3 {m.a3:5.3f}  A4 {m.a4:7.3f}  figure {m.figure}"
+            for m in family.members
+        ]
+    return lines
+
+
+def _spectra() -> list[str]:
+    lines = []
+    for name, title in spectra.shipped().items():
+        spectrum = spectra.read_spectrum(name)
+        lines.append(f"  {name}: {title}; {sum(spectrum.flights.values())} flights a block, seed {spectrum.seed}")
+    return lines
+
+
+def _methods() -> list[str]:
+    lines = []
+    for m in methods():
+        lines += [f"  {m.name} ({m.stage})", fill(m.formula, 96, initial_indent="    ", subsequent_indent="      ")]
+        lines += [fill(f"range: {m.range}", 96, initial_indent="    ", subsequent_indent="      ")]
+        lines += [fill(str(references()[key]), 96, initial_indent="    ", subsequent_indent="      ") for key in m.keys]
+    return lines
