@@ -1,0 +1,1 @@
+"""One module per command of `faying`, imported when the command runs."""
