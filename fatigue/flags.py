@@ -2,9 +2,13 @@
 
 from __future__ import annotations
 
+from typing import TYPE_CHECKING
+
 import numpy as np
 from numpy.typing import NDArray
 
+from fatigue.case.build import Case
+from fatigue.filled import FilledHoles, Governing
 from fatigue.hole.concentration import LARGEST_ROW_RATIO
 from fatigue.hole.countersink import KNIFE_EDGE, SMALLEST_SHANK
 from fatigue.joint import Joint
@@ -12,10 +16,19 @@ from fatigue.local import LocalStress
 from fatigue.material.curves import LocationCurves
 from fatigue.splice import Splice
 
+if TYPE_CHECKING:
+    from fatigue.life import RouteResult
+
 Array = NDArray[np.float64]
 
 USUAL_EDGE = 2.0
 """Edge distance over hole diameter below which a hole is flagged (common practice, no source)."""
+TOO_MUCH = 1.1
+"""Life by practice factors over the life of the solved fit from which it is said."""
+WORTH_KEEPING = 0.9
+"""Share of a residual stress below which its loss in the first block is said."""
+LARGEST_RESIDUAL = 0.02
+"""Boundary stress over load that the sheet around a hole may be solved to without a flag."""
 WORTH_SAYING = 0.01
 """Share of the damage that makes a doubtful part of it worth a flag."""
 
@@ -43,16 +56,41 @@ def geometry_flags(splice: Splice, joint: Joint, local: LocalStress) -> list[lis
 def stress_flags(splice: Splice, joint: Joint, local: LocalStress) -> list[list[str]]:
     """Return each location's flags on the stress it sees, by location."""
     flags: list[list[str]] = []
-    top, bottom = local.levels[-1], local.levels[0]
+    bottom = local.levels[0]
     for i, (_, s) in enumerate(splice.locations):
         material, own = splice.sheets[s].material, []
-        net = local.net_per_stress[i] * max(top, 0.0)
+        net = local.net[i].max()
         if net > material.ultimate:
             own.append(f"net section {net:.0f} MPa above the sheet's strength {material.ultimate:.0f} MPa")
         elif net > material.yield_stress:
             own.append(f"net section {net:.0f} MPa above yield {material.yield_stress:.0f} MPa")
         if bottom < 0.0 and joint.face[i] and splice.bending != "none":
             own.append("bending in compression held at its light-load arm")
+        flags.append(own)
+    return flags
+
+
+def fit_flags(case: Case, filled: FilledHoles, points: Governing, routes: dict[str, RouteResult]) -> list[list[str]]:
+    """Return each location's flags on what its fit is worth, by location."""
+    flags: list[list[str]] = []
+    practice, contact = routes["practice"].life, routes["contact"].life
+    for i, (r, s) in enumerate(case.splice.locations):
+        row, material, own = case.splice.rows[r], case.splice.sheets[s].material, [*filled.making[i].flags]
+        hole = row.hole
+        if case.life.credit == "contact" and hole.fit_percent is None and hole.squeeze_ratio is None:
+            own.append(f"no fit given for hole {hole.name}: taken as snug")
+        if practice[i] > TOO_MUCH * contact[i] and case.life.credit != "none":
+            own.append(f"practice factors promise {practice[i] / contact[i]:.1f} times the life of the solved fit")
+        before = filled.making[i].residual_hoop
+        left = filled.settled[points.way[i]].credit_left[i, points.point[i]]
+        if before < 0.0 and left < WORTH_KEEPING:
+            own.append(f"the largest loads leave {100 * left:.0f} % of the residual stress {before:.0f} MPa")
+        if before < 0.0 and not material.strain_life:
+            own.append("cyclic curve assumed from the yield stress")
+        if filled.maps.residual[i] > LARGEST_RESIDUAL:
+            own.append(f"hole's surroundings solved to {100 * filled.maps.residual[i]:.0f} % only")
+        if hole.friction > 0.0:
+            own.append("friction as a stated multiplier, not solved")
         flags.append(own)
     return flags
 

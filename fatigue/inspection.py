@@ -56,7 +56,9 @@ def inspection_priority(share_used: Array, threshold: Array, hidden: NDArray[np.
     hidden : ndarray of bool, shape (L,)
         Whether the crack starts where the eye cannot see it.
     """
-    order = np.lexsort((~hidden, threshold, -share_used))
+    # shares that differ by rounding are the same
+    used, due = (np.round(np.log10(np.clip(value, 1e-300, 1e300)), 9) for value in (share_used, threshold))
+    order = np.lexsort((~hidden, due, -used))
     priority = np.empty(order.size, dtype=np.int64)
     priority[order] = np.arange(1, order.size + 1)
     return priority

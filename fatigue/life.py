@@ -16,6 +16,7 @@ from numpy.typing import NDArray
 import spectra
 from fatigue.case.build import Case
 from fatigue.damage import damage_per_cycle, life_in_flights
+from fatigue.filled import FilledHoles, Governing, filled_holes, governing_point, mapped
 from fatigue.inspection import ThresholdFactor, threshold_factor
 from fatigue.joint import Joint, solve_joint
 from fatigue.loads import CountedLoads, count_loads
@@ -36,6 +37,8 @@ class RouteResult:
 
     Parameters
     ----------
+    peak : ndarray, shape (L, m)
+        Hoop stress at the load levels, at the point of the edge that governs [MPa].
     low, high : ndarray, shape (L, n)
         Local stress at the ends of each counted cycle [MPa].
     by_cycle : ndarray, shape (L, n)
@@ -50,6 +53,7 @@ class RouteResult:
         Whether the map is not monotone but there is no history to count anew.
     """
 
+    peak: Array
     low: Array
     high: Array
     by_cycle: Array
@@ -74,10 +78,15 @@ class Estimate:
     joint : Joint
         Row loads and bending.
     local : LocalStress
-        Hole-edge stress of each route at the load levels.
+        Hole-edge stress without credit at the load levels.
+    filled : FilledHoles
+        Hole-edge stress with the pin's contact solved.
+    points : Governing
+        Where each edge fails by route `contact`.
     curves : LocationCurves
         One S-N curve per location.
     routes : dict of RouteResult
+        ``none``, ``practice`` and ``contact``; ``snug`` is contact with no credit for interference or making.
     threshold : ThresholdFactor
     rows : DataFrame
         One line per location, worst first; the columns of ``rows.csv``.
@@ -88,6 +97,8 @@ class Estimate:
     loads: CountedLoads
     joint: Joint
     local: LocalStress
+    filled: FilledHoles
+    points: Governing
     curves: LocationCurves
     routes: dict[str, RouteResult]
     threshold: ThresholdFactor
@@ -140,15 +151,19 @@ def estimate(
     local = local_stress(case.splice, joint, load_levels(loads.cycles))
     report(2, 4)
     curves = location_curves(case, local, loads.cycles)
+    filled = filled_holes(case.splice, joint, local)
+    report(3, 4)
+    points = governing_point(filled.credited, local.levels, loads.cycles, curves)
+    snug = governing_point(filled.uncredited, local.levels, loads.cycles, curves)
+    peaks = {"none": local.untreated, "practice": local.practice, "contact": points.peak, "snug": snug.peak}
     routes = {
         name: route_result(peak, local.levels, loads, curves, case.life.damage_sum, case.loads.repeating)
-        for name, peak in local.peak.items()
+        for name, peak in peaks.items()
     }
-    report(3, 4)
     factor = threshold_factor(case.inspection)
-    rows, order = ranked_table(case, loads, joint, local, curves, routes, factor)
+    rows, order = ranked_table(case, loads, joint, local, filled, points, curves, routes, factor)
     report(4, 4)
-    return Estimate(case, loads, joint, local, curves, routes, factor, rows, order)
+    return Estimate(case, loads, joint, local, filled, points, curves, routes, factor, rows, order)
 
 
 def load_levels(cycles: Cycles) -> Array:
@@ -169,12 +184,12 @@ def location_curves(case: Case, local: LocalStress, cycles: Cycles) -> LocationC
     low, high = (cycles.low[largest], cycles.high[largest]) if largest is not None else (0.0, 1.0)
     if high == low:
         low, high = 0.0, 1.0
-    untreated = local.peak["none"]
-    at_low, at_high = (np.array([np.interp(s, local.levels, peak) for peak in untreated]) for s in (low, high))
     if local.levels.size < 2:
         severity = np.array(local.factors.k_bypass)
     else:
-        severity = np.abs(at_high - at_low) / (local.net_per_stress * (high - low))
+        ends = np.array([low, high])
+        peak, net = (np.diff(mapped(own, local.levels, ends))[:, 0] for own in (local.untreated, local.net))
+        severity = np.abs(np.divide(peak, net, out=np.array(local.factors.k_bypass), where=net != 0.0))
     by_location: list[CurveFamily] = [
         case.families[case.splice.sheets[s].material.name] for _, s in case.splice.locations
     ]
@@ -200,8 +215,8 @@ def route_result(
         Whether a local history that has to be counted anew repeats.
     """
     cycles = loads.cycles
-    ends = np.array([[np.interp(s, levels, own) for s in (cycles.low, cycles.high)] for own in peak])
-    low, high = ends.min(axis=1), ends.max(axis=1)
+    first, second = (mapped(peak, levels, end) for end in (cycles.low, cycles.high))
+    low, high = np.minimum(first, second), np.maximum(first, second)
     by_cycle = damage_per_cycle(curves.life(low, high), cycles.count)
     damage = by_cycle.sum(axis=1)
     # rounding may dent a flat map: only a fall that could be seen in a stress counts
@@ -214,6 +229,7 @@ def route_result(
         life = curves.only(int(i)).life(own.low[None], own.high[None])
         damage[i] = damage_per_cycle(life, own.count).sum()
     return RouteResult(
+        peak=peak,
         low=low,
         high=high,
         by_cycle=by_cycle,

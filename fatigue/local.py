@@ -1,4 +1,4 @@
-"""The map S -> stress at the hole edge of every location, by route."""
+"""The map S -> stress at the hole edge of every location, by superposition and without credit for the fit."""
 
 from __future__ import annotations
 
@@ -8,6 +8,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from fatigue.hole import concentration, countersink
+from fatigue.hole.sheet import Edge, sheet_edge
 from fatigue.hole.superposition import PeakParts, peak_parts
 from fatigue.joint import Joint
 from fatigue.splice import Splice
@@ -30,6 +31,8 @@ class HoleFactors:
         Countersink and head-fixity factors, 1 where there is nothing to say; both are in the ones above.
     practice : ndarray
         Product of the two practice factors.
+    k_pressure : ndarray
+        The part of `k_bearing` that the pin's pressure alone makes, which stays when the load reverses.
     """
 
     width_ratio: Array
@@ -39,6 +42,7 @@ class HoleFactors:
     sink: Array
     tilt: Array
     practice: Array
+    k_pressure: Array
 
 
 @dataclass(frozen=True, eq=False)
@@ -53,19 +57,26 @@ class LocalStress:
         Bypass, bearing and bending parts of the untreated peak, shape (L, n) each [MPa].
     bending : ndarray, shape (L, n)
         Nominal bending stress at the governing face [MPa].
-    peak : dict of ndarray, shape (L, n)
-        Peak hoop stress by route [MPa].
     factors : HoleFactors
-    net_per_stress : ndarray, shape (L,)
-        Net-section stress over S.
+    net : ndarray, shape (L, n)
+        Net-section stress: incoming load/((W - d) t) [MPa].
     """
 
     levels: Array
     parts: PeakParts
     bending: Array
-    peak: dict[str, Array]
     factors: HoleFactors
-    net_per_stress: Array
+    net: Array
+
+    @property
+    def untreated(self) -> Array:
+        """Peak hoop stress with no credit, route `none`, shape (L, n) [MPa]."""
+        return self.parts.total
+
+    @property
+    def practice(self) -> Array:
+        """Peak hoop stress by route `practice`, shape (L, n) [MPa]."""
+        return np.asarray(self.parts.total * self.factors.practice[:, None])
 
 
 def hole_factors(splice: Splice, joint: Joint) -> HoleFactors:
@@ -87,10 +98,15 @@ def hole_factors(splice: Splice, joint: Joint) -> HoleFactors:
     )
     tilt = np.array([concentration.head_fixity_factor(row.head_fixity) for row in rows])
     k_open = np.asarray(hole_in(x))
+    edge: Edge = "row" if splice.edge == "row" else "strip"
+    around = [sheet_edge(edge, *own) for own in zip(x, end_ratios(splice, joint), poisson, strict=True)]
+    pressure = np.array([own.cosine_bearing_factor for own in around])
+    pressure = pressure - x / 2 * np.array([own.open_factor for own in around])
     return HoleFactors(
         width_ratio=x,
         k_bypass=sink * k_open,
-        k_bearing=sink * (tilt * concentration.COSINE_BEARING + x / 2 * k_open),
+        k_pressure=sink * tilt * pressure,
+        k_bearing=sink * (tilt * pressure + x / 2 * k_open),
         k_bend=concentration.bending_any_sheet(poisson, diameter / joint.thickness),
         sink=sink,
         tilt=tilt,
@@ -111,22 +127,30 @@ def local_stress(splice: Splice, joint: Joint, levels: Array) -> LocalStress:
     """
     factors = hole_factors(splice, joint)
     bending = joint.bending(levels)
-    parts = peak_parts(
-        bypass=joint.bypass_per_stress[:, None] * levels,
-        transfer=joint.transfer_per_stress[:, None] * levels,
-        bearing=joint.bearing_per_stress[:, None] * levels,
-        bending=bending,
-        k_bypass=factors.k_bypass[:, None],
-        k_pressure=(factors.sink * factors.tilt * concentration.COSINE_BEARING)[:, None],
-        k_bend=factors.k_bend[:, None],
-    )
-    untreated = parts.total
-    incoming = joint.bypass_per_stress + joint.transfer_per_stress
+    loads = joint.loads(levels)
     return LocalStress(
         levels=levels,
-        parts=parts,
+        parts=peak_parts(
+            bypass=loads.bypass,
+            transfer=loads.transfer,
+            bearing=loads.bearing,
+            bending=bending,
+            k_bypass=factors.k_bypass[:, None],
+            k_pressure=factors.k_pressure[:, None],
+            k_bend=factors.k_bend[:, None],
+        ),
         bending=bending,
-        peak={"none": untreated, "practice": untreated * factors.practice[:, None]},
         factors=factors,
-        net_per_stress=incoming / (1.0 - factors.width_ratio),
+        net=loads.incoming / (1.0 - factors.width_ratio)[:, None],
     )
+
+
+def end_ratios(splice: Splice, joint: Joint) -> Array:
+    """Return end distance over diameter where a sheet ends on its pin's side, infinite elsewhere, shape (L,)."""
+    ratios = np.full(joint.row.size, np.inf)
+    for i, (r, s) in enumerate(zip(joint.row, joint.sheet, strict=True)):
+        sheet = splice.sheets[s]
+        before, after = sheet.start == "free" and r == sheet.first_row, sheet.end == "free" and r == sheet.last_row
+        if after if joint.incoming_before[i] else before:
+            ratios[i] = sheet.edge / splice.rows[r].hole_diameter
+    return ratios

@@ -92,19 +92,23 @@ class HoleCondition:
     Parameters
     ----------
     name : str
-    fit_percent : float
-        Retained diametral interference, percent of the hole diameter; negative is clearance.
+    fit_percent : float or None
+        Diametral interference, percent of the hole diameter; negative is clearance. None: from the squeeze ratio, else
+        snug.
     cold_expansion_percent : float
         Mandrel expansion before the fastener goes in.
     squeeze_ratio : float or None
         Driven-head diameter over shank diameter (rivets).
+    friction : float
+        Coefficient between pin and hole, as a stated multiplier of route `contact`.
     practice : Practice
     """
 
     name: str
-    fit_percent: float = 0.0
+    fit_percent: float | None = None
     cold_expansion_percent: float = 0.0
     squeeze_ratio: float | None = None
+    friction: float = 0.0
     practice: Practice = field(default_factory=Practice)
 
 
@@ -140,6 +144,8 @@ class Row:
         Movement of the fastener before it takes load [mm].
     friction_share : float
         Share of the row's load that the clamped faces carry past its fasteners: off their bearing stress.
+    driven_sheet : int or None
+        Sheet under the driven head of a rivet; None: the last of the row.
     """
 
     name: str
@@ -153,6 +159,7 @@ class Row:
     head_fixity: float = 1.0
     slack: float = 0.0
     friction_share: float = 0.0
+    driven_sheet: int | None = None
 
 
 @dataclass(frozen=True)
@@ -198,6 +205,11 @@ class Splice:
     def first_loaded(self) -> int:
         """Index of the sheet whose remote gross stress is S."""
         return next(i for i, sheet in enumerate(self.sheets) if sheet.start == "loaded")
+
+    def driven_sheet(self, row: int) -> int:
+        """Return the sheet under the driven heads of a row."""
+        given = self.rows[row].driven_sheet
+        return max(s for s, sheet in enumerate(self.sheets) if sheet.spans(row)) if given is None else given
 
     @property
     def locations(self) -> tuple[tuple[int, int], ...]:

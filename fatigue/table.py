@@ -10,7 +10,9 @@ from numpy.typing import NDArray
 
 from fatigue.case.build import Case
 from fatigue.damage import damage_per_cycle, life_in_flights
-from fatigue.flags import curve_flags, geometry_flags, stress_flags
+from fatigue.filled import FilledHoles, Governing
+from fatigue.flags import curve_flags, fit_flags, geometry_flags, stress_flags
+from fatigue.hole.edge import worth
 from fatigue.inspection import ThresholdFactor, inspection_priority
 from fatigue.joint import Joint
 from fatigue.loads import CountedLoads
@@ -28,30 +30,36 @@ def ranked_table(
     loads: CountedLoads,
     joint: Joint,
     local: LocalStress,
+    filled: FilledHoles,
+    points: Governing,
     curves: LocationCurves,
     routes: dict[str, RouteResult],
     factor: ThresholdFactor,
 ) -> tuple[pd.DataFrame, NDArray[np.int64]]:
     """Return the frame behind ``rows.csv`` and the location on each of its lines.
 
-    Stresses are those at the spectrum's largest remote stress; `peak_min_MPa` is that at its smallest.
+    Stresses are those at the spectrum's largest remote stress, the three parts without credit; `peak_max_MPa` and
+    `peak_min_MPa` are the extremes over the spectrum by the case's route.
     """
     splice, settings = case.splice, case.inspection
     own = routes[case.life.credit]
-    none = routes["none"]
-    no_credit = none.life
+    no_credit = np.minimum(routes["none"].life, routes["snug"].life)
     basis = own.life if settings.use_credit else no_credit
     threshold = basis * factor.total
     share_used = np.where(np.isfinite(threshold), case.loads.flown_flights / threshold, 0.0)
     top = local.levels.size - 1
-    peak = local.peak[case.life.credit]
-    treated = peak[:, top] / none_safe(local.peak["none"][:, top])
+    loads_at_top = joint.loads(local.levels[top:])
     lower, upper = neighbour_lives(case, curves, own, loads)
+    every = np.arange(joint.row.size)
+    fit_worth = worth(filled.credited[every, points.way], local.untreated)
+    left = np.stack([part.left for part in filled.settled], axis=1)
+    by_way = life_in_flights(points.damage, case.life.damage_sum)
     flags = [
-        [*a, *b, *c]
-        for a, b, c in zip(
+        [*a, *b, *c, *d]
+        for a, b, c, d in zip(
             geometry_flags(splice, joint, local),
             stress_flags(splice, joint, local),
+            fit_flags(case, filled, points, routes),
             curve_flags(curves, own.low, own.high, own.by_cycle, own.recounted, own.folded),
             strict=True,
         )
@@ -64,23 +72,36 @@ def ranked_table(
             "face": joint.face,
             "hidden": joint.hidden,
             "transfer_fraction": joint.transfer,
-            "bypass_MPa": joint.bypass_per_stress * local.levels[top],
-            "bearing_MPa": joint.bearing_per_stress * local.levels[top],
-            "bending_MPa": local.bending[:, top],
+            "bypass_MPa": loads_at_top.bypass[:, 0],
+            "bearing_MPa": loads_at_top.bearing[:, 0],
+            "bending_MPa": local.bending[:, top] + 0.0,
             "k_bypass": local.factors.k_bypass,
             "k_bearing": local.factors.k_bearing,
             "k_bend": local.factors.k_bend,
-            "peak_max_MPa": own.high.max(axis=1, initial=-np.inf) if own.high.size else peak[:, top],
-            "peak_min_MPa": own.low.min(axis=1, initial=np.inf) if own.low.size else peak[:, top],
-            "from_bypass_MPa": local.parts.bypass[:, top] * treated,
-            "from_bearing_MPa": local.parts.bearing[:, top] * treated,
-            "from_bending_MPa": local.parts.bending[:, top] * treated,
+            "peak_max_MPa": own.peak.max(axis=1),
+            "peak_min_MPa": own.peak.min(axis=1),
+            "from_bypass_MPa": local.parts.bypass[:, top],
+            "from_bearing_MPa": local.parts.bearing[:, top],
+            "from_bending_MPa": local.parts.bending[:, top] + 0.0,
+            "fit_percent": [100 * hole.fit for hole in filled.making],
+            "residual_MPa": [hole.residual_hoop for hole in filled.making],
+            "residual_left_MPa": np.stack([part.left for part in filled.settled], axis=1)[
+                every, points.way, points.point
+            ],
+            "angle_deg": filled.theta[points.point],
+            "range_factor": fit_worth.range_factor[every, points.point],
+            "mean_shift_MPa": fit_worth.mean_shift[every, points.point],
+            "contact_from_deg": filled.maps.contact_from[:, top],
+            "contact_to_deg": filled.maps.contact_to[:, top],
             "severity": curves.given,
             "damage_per_flight": own.damage,
             "life_flights": own.life,
-            "life_none_flights": none.life,
+            "life_none_flights": routes["none"].life,
             "life_practice_flights": routes["practice"].life,
-            "life_contact_flights": routes["contact"].life if "contact" in routes else np.nan,
+            "life_contact_flights": routes["contact"].life,
+            "life_bending_resisted_flights": by_way[:, 0],
+            "life_bending_outside_flights": by_way[:, 1],
+            "life_snug_flights": routes["snug"].life,
             "life_no_credit_flights": no_credit,
             "life_lower_kt_flights": lower,
             "life_upper_kt_flights": upper,
@@ -95,11 +116,6 @@ def ranked_table(
     frame = frame.iloc[order].reset_index(drop=True)
     frame["rank"] = np.arange(1, order.size + 1)
     return frame, order.astype(np.int64)
-
-
-def none_safe(values: Array) -> Array:
-    """Return values with zeros made one, for ratios that are then zero anyway."""
-    return np.where(values == 0.0, 1.0, values)
 
 
 def neighbour_lives(case: Case, curves: LocationCurves, own: RouteResult, loads: CountedLoads) -> tuple[Array, Array]:

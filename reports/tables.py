@@ -121,9 +121,9 @@ COLUMNS = (
     ("bearing_MPa", "bearing\n{stress}", "{:.0f}"),
     ("bending_MPa", "bending\n{stress}", "{:.0f}"),
     ("peak_max_MPa", "peak\n{stress}", "{:.0f}"),
-    ("severity", "severity\n", "{:.2f}"),
-    ("life_flights", "life\nflights", "life"),
-    ("life_no_credit_flights", "no credit\nflights", "life"),
+    ("life_no_credit_flights", "life, no\ncredit", "life"),
+    ("life_practice_flights", "by\npractice", "life"),
+    ("life_contact_flights", "by\ncontact", "life"),
     ("threshold_flights", "inspect\nfrom", "life"),
     ("share_used", "used\n%", "share"),
     ("priority", "inspect\norder", "{:d}"),
@@ -160,12 +160,12 @@ def answer(estimate: Estimate) -> list[str]:
     sentences = [
         f"Row {first['row']}, {first['sheet']}, goes first, on {face_text(first)}, after {life_text(life)} flights at "
         f"the median (route {route}).",
-        f"Its peak stress is {shares}.",
+        f"What the hole's edge sees without credit is {shares}.",
     ]
-    if route != "none" and math.isfinite(life) and bare > 0:
+    if math.isfinite(life) and 0 < bare < life:
         sentences.append(
-            f"Without credit for what fills the hole the life is {life_text(bare)}: the credit is worth "
-            f"{life / bare:.1f} times."
+            f"Without credit for what fills the hole the life is {life_text(bare)} flights: the credit is worth "
+            f"{life / bare:.1f} times, and is the first thing to doubt."
         )
     return sentences
 

@@ -161,6 +161,7 @@ def _splice(tables: Tables, table: schema.SpliceTable) -> Splice:
             countersink=Countersink(sheet_names.index(sink.sheet), sink.depth_mm) if sink else None,
             flexibility=row.flexibility_mm_per_N or table.flexibility_mm_per_N,
             head_fixity=row.head_fixity,
+            driven_sheet=sheet_names.index(row.driven_head) if row.driven_head else None,
         )
 
     return Splice(
@@ -218,9 +219,10 @@ def _hole(name: str, table: schema.HoleTable, fastener: Fastener) -> HoleConditi
     own = given.hole is not None or given.filling is not None
     return HoleCondition(
         name=name,
-        fit_percent=table.fit_percent or 0.0,
+        fit_percent=table.fit_percent,
         cold_expansion_percent=table.cold_expansion_percent,
         squeeze_ratio=table.squeeze_ratio,
+        friction=table.friction,
         practice=Practice(
             hole=given.hole if given.hole is not None else usual.hole,
             filling=given.filling if given.filling is not None else usual.filling,

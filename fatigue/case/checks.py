@@ -174,6 +174,9 @@ def _row(row: schema.RowTable, where: str, tables: Tables) -> Iterator[Fault]:
             )
     yield from _known(row.fastener, [*tables.fasteners, *library.fasteners()], f"{where}.fastener", "fastener")
     yield from _known(row.hole, list(tables.holes), f"{where}.hole", "hole table")
+    if row.driven_head is not None:
+        names = [sheet.name for sheet in tables.sheets if sheet is not None]
+        yield from _known(row.driven_head, names, f"{where}.driven_head", "sheet")
     if row.countersink is not None:
         sink = row.countersink
         names = [sheet.name for sheet in tables.sheets if sheet is not None]

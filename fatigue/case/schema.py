@@ -104,6 +104,7 @@ class RowTable(Table):
     countersink: CountersinkTable | None = None
     flexibility_mm_per_N: Annotated[float, Field(gt=0, le=1)] | None = None
     head_fixity: Fraction = 1.0
+    driven_head: Text | None = None
 
 
 class PracticeTable(Table):
@@ -119,6 +120,7 @@ class HoleTable(Table):
     fit_percent: Annotated[float, Field(ge=-5, le=5)] | None = None
     cold_expansion_percent: Annotated[float, Field(ge=0, le=10)] = 0.0
     squeeze_ratio: Annotated[float, Field(ge=1, le=3)] | None = None
+    friction: Annotated[float, Field(ge=0, le=0.5)] = 0.0
     practice: PracticeTable = Field(default_factory=PracticeTable)
 
 
@@ -143,7 +145,7 @@ class FastenerTable(Table):
 class LifeTable(Table):
     """`[life]`: the route to the life."""
 
-    credit: Literal["none", "practice", "contact"] = "practice"
+    credit: Literal["none", "practice", "contact"] = "contact"
     curve: Literal["notched"] = "notched"
     tail: Literal["limit", "continued", "shallower"] = "continued"
     damage_sum: Annotated[float, Field(gt=0, le=10)] = 1.0

@@ -6,14 +6,18 @@ import numpy as np
 from matplotlib.axes import Axes
 
 from fatigue.life import Estimate
-from reports.figures.style import INK, MARK, PARTS, SOFT, life_text
+from reports.figures.style import INK, MARK, PAPER, PARTS, SOFT, life_text
 
 MOST_LINES = 14
 """Locations drawn; the worst ones where there are more."""
 
 
 def draw_makeup(ax: Axes, estimate: Estimate) -> Axes:
-    """Draw a bar per location, worst on top: bypass, bearing and bending parts of the peak at the largest load."""
+    """Draw a bar per location, worst on top: what makes up the stress at the hole's edge, and what the route leaves.
+
+    Bars are bypass, bearing and bending at the largest load without credit; the mark is the largest stress by the
+    case's own route.
+    """
     rows = estimate.rows.head(MOST_LINES)
     y = np.arange(len(rows))
     start = np.zeros(len(rows))
@@ -21,17 +25,21 @@ def draw_makeup(ax: Axes, estimate: Estimate) -> Axes:
         length = rows[f"from_{part}_MPa"].to_numpy()
         ax.barh(y, length, left=start, color=colour, hatch=hatch, edgecolor=INK, linewidth=0.5, label=part, height=0.62)
         start = start + length
-    edge = start.max(initial=1.0)
-    for i, (peak, life) in enumerate(zip(start, rows["life_flights"], strict=True)):
-        ax.text(peak + 0.015 * edge, i, f"{peak:.0f} MPa  |  {life_text(life)}", va="center", fontsize=8)
+    route = estimate.case.life.credit
+    peak = rows["peak_max_MPa"].to_numpy()
+    if route != "none":
+        ax.plot(peak, y, ls="none", marker="D", ms=6, mfc=PAPER, mec=MARK, mew=1.6, label=f"largest by {route}")
+    edge = max(start.max(initial=1.0), peak.max(initial=1.0))
+    for i, (reach, life) in enumerate(zip(np.maximum(start, peak), rows["life_flights"], strict=True)):
+        ax.text(reach + 0.025 * edge, i, life_text(life), va="center", fontsize=8)
     names = [f"{row}, {sheet}" for row, sheet in zip(rows["row"], rows["sheet"], strict=True)]
     ax.set_yticks(y, names)
     ax.get_yticklabels()[0].set(weight="bold", color=MARK)
     ax.invert_yaxis()
     ax.set_xlim(0, 1.36 * edge)
     ax.tick_params(axis="y", length=0)
-    ax.set_xlabel("peak stress at the hole edge, largest load of the spectrum [MPa]  |  life [flights]")
-    ax.legend(loc="lower right", ncols=1, title="part of the peak", title_fontsize=8, fontsize=8)
+    ax.set_xlabel("stress at the hole's edge under the largest load [MPa]; beside it the life [flights]")
+    ax.legend(loc="lower right", ncols=1, title="without credit", title_fontsize=8, fontsize=8)
     left = len(estimate.rows) - len(rows)
     if left > 0:
         ax.text(
