@@ -46,3 +46,14 @@ def life_in_flights(damage: Array, damage_sum: float = 1.0) -> Array:
     """
     with np.errstate(divide="ignore", over="ignore"):
         return np.asarray(damage_sum / np.asarray(damage, dtype=np.float64))
+
+
+def shortest(life: Array) -> int:
+    """Return the place of the shortest life; of lives alike but for rounding, the first.
+
+    Examples
+    --------
+    >>> shortest(np.array([7e4, 5e4 * (1 + 1e-14), 5e4]))
+    1
+    """
+    return int(np.argmin(np.round(np.log(np.maximum(life, 1e-300)), 9)))

@@ -99,7 +99,7 @@ def made_holes(splice: Splice) -> tuple[Installed, ...]:
     return tuple(found)
 
 
-def filled_holes(splice: Splice, joint: Joint, local: LocalStress) -> FilledHoles:
+def filled_holes(splice: Splice, joint: Joint, local: LocalStress, credited_only: bool = False) -> FilledHoles:
     """Solve the contact of every location's pin at the load levels.
 
     Parameters
@@ -108,6 +108,8 @@ def filled_holes(splice: Splice, joint: Joint, local: LocalStress) -> FilledHole
     joint : Joint
     local : LocalStress
         Its levels span the spectrum.
+    credited_only : bool
+        Leave `uncredited` at what the fit gives, where nobody asks for it.
 
     Returns
     -------
@@ -147,7 +149,7 @@ def filled_holes(splice: Splice, joint: Joint, local: LocalStress) -> FilledHole
     maps = solve(fit, np.arange(len(places)))
     bare = np.stack([maps.resisted, maps.outside], axis=1)
     again = np.flatnonzero(uncredited(fit) != fit)
-    if again.size:
+    if again.size and not credited_only:
         loose = solve(uncredited(fit), again)
         bare[again] = np.stack([loose.resisted, loose.outside], axis=1)
     residual = np.array([hole.residual_hoop for hole in making])

@@ -85,9 +85,7 @@ def ranked_table(
             "from_bending_MPa": local.parts.bending[:, top] + 0.0,
             "fit_percent": [100 * hole.fit for hole in filled.making],
             "residual_MPa": [hole.residual_hoop for hole in filled.making],
-            "residual_left_MPa": np.stack([part.left for part in filled.settled], axis=1)[
-                every, points.way, points.point
-            ],
+            "residual_left_MPa": left[every, points.way, points.point],
             "angle_deg": filled.theta[points.point],
             "range_factor": fit_worth.range_factor[every, points.point],
             "mean_shift_MPa": fit_worth.mean_shift[every, points.point],

@@ -12,6 +12,8 @@ click.UsageError.exit_code = 1
 COMMANDS = {
     "life": "Estimate the life of every row and sheet of a case and write the report.",
     "demo": "Run a shipped, invented case.",
+    "compare": "Put hole conditions of one case, or several cases, beside each other.",
+    "hole": "Solve one hole: peak stress, range factor and contact.",
     "new": "Write a commented starter case.",
     "count": "Count a recorded history's rainflow cycles.",
     "sources": "Print materials, fasteners, curves, spectra and methods with where they come from.",

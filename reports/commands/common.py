@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 import sys
-from collections.abc import Callable
+from collections.abc import Callable, Iterator
+from contextlib import contextmanager
 from functools import wraps
 from pathlib import Path
 from typing import Any
@@ -41,6 +42,13 @@ def taught(function: Callable[..., Any]) -> Callable[..., Any]:
 def plain(text: str) -> str:
     """Return text without control characters, which a file's names could carry into a terminal."""
     return "".join(c if c.isprintable() or c == "\n" else "?" for c in text)
+
+
+@contextmanager
+def progress(words: str) -> Iterator[Callable[[int, int], None]]:
+    """Show a bar on a terminal while something runs; quiet in a pipe."""
+    with click.progressbar(length=1000, label=words, file=sys.stderr, hidden=not sys.stderr.isatty()) as bar:
+        yield lambda done, total: bar.update(1000 * done // max(total, 1) - bar.pos)
 
 
 def estimate_and_write(case: Path, out: Path, inch: bool, strict: bool) -> None:
