@@ -61,9 +61,9 @@ def count_blocks(blocks: Sequence[Block], close: bool = True) -> Cycles:
                 points += [high, low, high]
                 flown[i] = due
                 visits[i] += 1
-    high, low, number = np.array(blocks, dtype=np.float64).reshape(-1, 3).T
-    rest = np.maximum(number * flights - visits, 0.0)
-    table = joined([count(points, close), Cycles(low, high, rest)]).merged()
+    highs, lows, numbers = np.array(blocks, dtype=np.float64).reshape(-1, 3).T
+    rest = np.maximum(numbers * flights - visits, 0.0)
+    table = joined([count(points, close), Cycles(lows, highs, rest)]).merged()
     present = table.count > 1e-12 * flights  # a block flown whole leaves a rest of rounding
     return Cycles(table.low[present], table.high[present], table.count[present]).per_flight(flights)
 

@@ -57,7 +57,7 @@ def close_nests(points: Array) -> tuple[list[Pairs], Array]:
         start, stop = _taken_out(points, is_peak, pits)
         if pits.first.size <= FEW_PITS:
             found += [
-                _close_one(points, is_peak, *pit)
+                _close_one(points, is_peak, *map(int, pit))
                 for pit in zip(pits.first, pits.floor, pits.last, start, stop, strict=True)
             ]
         else:
@@ -139,9 +139,7 @@ def _first_true(test: Callable[[Index, Index], Flags], start: Index, number: Ind
     return np.asarray(start + 2 * low)
 
 
-def _close_one(
-    z: Array, is_peak: Flags, first: np.intp, floor: np.intp, last: np.intp, start: np.intp, stop: np.intp
-) -> Pairs:
+def _close_one(z: Array, is_peak: Flags, first: int, floor: int, last: int, start: int, stop: int) -> Pairs:
     """Return the cycles of one pit: its peaks from `start` to before `stop`."""
     left_from, right_from = first + (not is_peak[first]), floor + 1 + (not is_peak[floor + 1])
     left, right = z[left_from : floor + 1 : 2], z[right_from : last + 1 : 2]
