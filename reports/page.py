@@ -2,40 +2,47 @@
 
 from __future__ import annotations
 
-import io
+from collections.abc import Mapping
 from typing import Any
 
 from jinja2 import Environment, PackageLoader, StrictUndefined
 from markupsafe import Markup
-from matplotlib.figure import Figure
 
 from fatigue.cautions import CAUTIONS
+from fatigue.fits import FitCurves
 from fatigue.life import Estimate
 from fatigue.references import methods, references
-from reports.figures.sheets import critical_row_figure, curve_figure, loads_figure
-from reports.figures.style import life_text, styled
+from reports.figures.style import life_text
+from reports.fit_words import fit_story
 from reports.tables import answer, in_unit, share_text, threshold_text, versions
 
+LABELS = {
+    "critical_row": "Section through the splice and stress make-up by location",
+    "loads": "Exceedances of the remote stress and damage by stress range",
+    "curve": "S-N family with the governing location's cycles",
+    "life_against_fit": "Life of every row against the fit of its holes",
+}
+"""What each figure shows, for who cannot see it."""
 ENVIRONMENT = Environment(loader=PackageLoader("reports"), autoescape=True, undefined=StrictUndefined)
 ENVIRONMENT.filters.update(life=life_text, share=share_text)
 
 
-def svg_text(figure: Figure, label: str) -> Markup:
-    """Return a figure as inline SVG with a label for who cannot see it."""
-    buffer = io.StringIO()
-    with styled():
-        figure.savefig(buffer, format="svg", metadata={"Date": None, "Creator": None})
-    text = buffer.getvalue()
-    body = text[text.index("<svg") :]
-    return Markup('<svg role="img" aria-label="{}"').format(label) + Markup(body[len("<svg") :])
+def inline(svg: str, label: str) -> Markup:
+    """Return an SVG document for use within the page, with a label for who cannot see it."""
+    body = svg[svg.index("<svg") + len("<svg") :]
+    return Markup('<svg role="img" aria-label="{}"').format(label) + Markup(body)
 
 
-def report_html(estimate: Estimate, inch: bool = False) -> str:
+def report_html(estimate: Estimate, curves: FitCurves, drawings: Mapping[str, str], inch: bool = False) -> str:
     """Return the whole report as HTML.
 
     Parameters
     ----------
     estimate : Estimate
+    curves : FitCurves
+        Life against fit.
+    drawings : mapping
+        The figures of `case_figures` as SVG.
     inch : bool
         Stresses in ksi.
     """
@@ -54,9 +61,8 @@ def report_html(estimate: Estimate, inch: bool = False) -> str:
         stress="ksi" if inch else "MPa",
         digits=1 if inch else 0,
         route=estimate.case.life.credit,
-        critical=svg_text(critical_row_figure(estimate), "Section through the splice and stress make-up by location"),
-        loads=svg_text(loads_figure(estimate), "Exceedances of the remote stress and damage by stress range"),
-        curve=svg_text(curve_figure(estimate), "S-N family with the governing location's cycles"),
+        figure={name: inline(drawings[name], label) for name, label in LABELS.items()},
+        story=fit_story(estimate, curves),
         load_name=estimate.loads.name,
         load_notes=estimate.loads.notes,
         cycles=estimate.loads.cycles.total,

@@ -8,15 +8,21 @@ import tempfile
 from collections.abc import Callable
 from pathlib import Path
 
+from fatigue.fits import fit_curves
 from fatigue.life import Estimate
-from reports.figures.sheets import critical_row_figure, curve_figure, loads_figure
-from reports.figures.style import save
+from reports.figures.sheets import case_figures
+from reports.figures.style import save, svg_text
 from reports.page import report_html
 from reports.tables import csv_text, cycles_frame, in_unit, result_json
 from spectra.faults import Fault, InputFaults
 
 
-def write(estimate: Estimate, folder: str | Path, inch: bool = False) -> list[Path]:
+def write(
+    estimate: Estimate,
+    folder: str | Path,
+    inch: bool = False,
+    on_progress: Callable[[int, int], None] | None = None,
+) -> list[Path]:
     """Write the report, the tables and the figures of an estimate.
 
     Parameters
@@ -26,6 +32,8 @@ def write(estimate: Estimate, folder: str | Path, inch: bool = False) -> list[Pa
         Made if it is not there.
     inch : bool
         Stresses in ksi.
+    on_progress : callable, optional
+        Called with the fits done and the fits in all, while life against fit is computed.
 
     Returns
     -------
@@ -37,21 +45,22 @@ def write(estimate: Estimate, folder: str | Path, inch: bool = False) -> list[Pa
     InputFaults
         If the folder cannot be written to; files that were there stay as they were.
     """
-    critical = critical_row_figure(estimate)
-    figures = {"critical_row": critical, "loads": loads_figure(estimate), "curve": curve_figure(estimate)}
+    curves = fit_curves(estimate, on_progress=on_progress)
+    figures = case_figures(estimate, curves)
+    drawings = {name: svg_text(figure) for name, figure in figures.items()}
     texts = {
         "rows.csv": csv_text(in_unit(estimate.rows, inch)),
         "cycles.csv": csv_text(in_unit(cycles_frame(estimate), inch)),
         "result.json": result_json(estimate, inch),
-        "report.html": report_html(estimate, inch),
+        "report.html": report_html(estimate, curves, drawings, inch),
+        **{f"{name}.svg": text for name, text in drawings.items()},
     }
 
     def fill(place: Path) -> None:
         for name, text in texts.items():
             (place / name).write_text(text, encoding="utf-8")
         for name, figure in figures.items():
-            for suffix in (".svg", ".png"):
-                save(figure, place / f"{name}{suffix}")
+            save(figure, place / f"{name}.png")
 
     return write_files(Path(folder), fill)
 

@@ -214,7 +214,10 @@ def edge_maps(
     ends = np.empty((2, places, levels))
     separates = np.zeros(places, dtype=np.bool_)
     open_factor, residual = np.empty(places), np.empty(places)
-    for i in range(places):
+    alike = _first_alike(
+        np.column_stack([bypass, bearing, bend, x, end, e, nu, ep, nup, fits, k_bends, sinks, tilts, mus])
+    )
+    for i in np.unique(alike).tolist():
         hole = pin_in_hole(edge, *(float(v[i]) for v in (x, end, e, nu, ep, nup)))
         open_factor[i], residual[i] = hole.sheet.open_factor, hole.sheet.residual
         passing, pressing = raised_loads(bypass[i], bearing[i], float(x[i]), float(tilts[i]), float(mus[i]))
@@ -228,7 +231,25 @@ def edge_maps(
             resisted[i] = sinks[i] * bent.hoop[:, points].T
         else:
             resisted[i] = outside[i]
-    return EdgeMaps(theta, resisted, outside, ends[0], ends[1], separates, open_factor, residual)
+    return EdgeMaps(
+        theta,
+        resisted[alike],
+        outside[alike],
+        ends[0][alike],
+        ends[1][alike],
+        separates[alike],
+        open_factor[alike],
+        residual[alike],
+    )
+
+
+def _first_alike(inputs: Array) -> NDArray[np.intp]:
+    """Return for each line the first one that differs from it by rounding only: a symmetric joint is solved once."""
+    with np.errstate(divide="ignore"):
+        digits = 10.0 ** (10 - np.ceil(np.log10(np.abs(inputs).max(axis=0, where=np.isfinite(inputs), initial=1e-9))))
+    rounded = np.where(np.isfinite(inputs), np.round(inputs * digits), inputs) + 0.0
+    _, first, inverse = np.unique(rounded, axis=0, return_index=True, return_inverse=True)
+    return np.asarray(first[inverse.reshape(-1)])
 
 
 def contact_ends(contact: Contact) -> tuple[Array, Array]:

@@ -57,7 +57,8 @@ def estimate_and_write(case: Path, out: Path, inch: bool, strict: bool) -> None:
     import reports
 
     estimate = fatigue.estimate(fatigue.read_case(case))
-    written = reports.write(estimate, out, inch)
+    with progress("life against fit") as report:
+        written = reports.write(estimate, out, inch, report)
     click.echo(plain(reports.ranked_text(estimate, inch)))
     click.echo(f"\nWritten to {plain(str(out))}: {', '.join(path.name for path in written)}")
     if strict and (estimate.rows["flags"] != "").any():

@@ -4,8 +4,10 @@ from __future__ import annotations
 
 from matplotlib.figure import Figure
 
+from fatigue.fits import FitCurves
 from fatigue.life import Estimate
 from reports.figures.curve import draw_curve
+from reports.figures.fits import draw_life_against_fit
 from reports.figures.loads import draw_damage_by_range, draw_exceedances
 from reports.figures.makeup import MOST_LINES, draw_makeup
 from reports.figures.section import draw_section
@@ -43,3 +45,21 @@ def curve_figure(estimate: Estimate) -> Figure:
         figure = new_figure(7.0, 4.2)
         draw_curve(figure.subplots(), estimate)
     return figure
+
+
+def fit_figure(estimate: Estimate, curves: FitCurves) -> Figure:
+    """Return life against fit for every row."""
+    with styled():
+        figure = new_figure(8.4, 4.4)
+        draw_life_against_fit(figure.subplots(), estimate, curves)
+    return figure
+
+
+def case_figures(estimate: Estimate, curves: FitCurves) -> dict[str, Figure]:
+    """Return every figure of a case's report by the name of its file."""
+    return {
+        "critical_row": critical_row_figure(estimate),
+        "loads": loads_figure(estimate),
+        "curve": curve_figure(estimate),
+        "life_against_fit": fit_figure(estimate, curves),
+    }

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import io
 from collections.abc import Iterator
 from contextlib import contextmanager
 from pathlib import Path
@@ -69,11 +70,19 @@ def new_figure(width: float, height: float) -> Figure:
 
 def save(figure: Figure, path: Path, dpi: int = 160) -> None:
     """Save a figure so that the same estimate gives the same bytes."""
-    with styled():
-        if path.suffix == ".svg":
-            figure.savefig(path, metadata={"Date": None})
-        else:
+    if path.suffix == ".svg":
+        path.write_text(svg_text(figure), encoding="utf-8")
+    else:
+        with styled():
             figure.savefig(path, dpi=dpi, metadata={"Software": None})
+
+
+def svg_text(figure: Figure) -> str:
+    """Return a figure as SVG, without date or program name."""
+    buffer = io.StringIO()
+    with styled():
+        figure.savefig(buffer, format="svg", metadata={"Date": None, "Creator": None})
+    return buffer.getvalue()
 
 
 def life_text(flights: float) -> str:
