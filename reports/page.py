@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
+from pathlib import Path
 from typing import Any
 
 from jinja2 import Environment, PackageLoader, StrictUndefined
@@ -79,7 +80,7 @@ def report_html(estimate: Estimate, curves: FitCurves, drawings: Mapping[str, st
         materials=_materials(estimate),
         versions=versions(),
         digest=estimate.case.digest,
-        source=estimate.case.source,
+        source=Path(estimate.case.source).name,
     )
 
 

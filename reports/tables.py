@@ -6,6 +6,7 @@ import json
 import math
 import platform
 from importlib.metadata import PackageNotFoundError, version
+from pathlib import Path
 from typing import Any
 
 import numpy as np
@@ -53,7 +54,7 @@ def result_json(estimate: Estimate, inch: bool = False) -> str:
     case = estimate.case
     content = {
         "title": case.title,
-        "case_file": case.source,
+        "case_file": Path(case.source).name,
         "case_sha256": case.digest,
         "versions": versions(),
         "inputs": case.echo,

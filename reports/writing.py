@@ -59,8 +59,7 @@ def write(
     def fill(place: Path) -> None:
         for name, text in texts.items():
             (place / name).write_text(text, encoding="utf-8")
-        for name, figure in figures.items():
-            save(figure, place / f"{name}.png")
+        save(figures["critical_row"], place / "critical_row.png")
 
     return write_files(Path(folder), fill)
 

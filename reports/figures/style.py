@@ -82,6 +82,7 @@ def svg_text(figure: Figure) -> str:
     buffer = io.StringIO()
     with styled():
         figure.savefig(buffer, format="svg", metadata={"Date": None, "Creator": None})
+    figure.set_layout_engine("none")  # laid out once is enough
     return buffer.getvalue()
 
 
