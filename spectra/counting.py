@@ -14,7 +14,7 @@ import numpy as np
 import rainflow
 from numpy.typing import ArrayLike, NDArray
 
-from spectra.cycles import Cycles, joined
+from spectra.cycles import Cycles, joined, owned, stacked
 from spectra.nests import close_nests
 from spectra.peeling import Pairs, peel
 from spectra.turning import finite, interleaved, peaks_and_valleys, separated, turning_points
@@ -65,8 +65,8 @@ def join_parts(parts: Sequence[Part]) -> Part:
     >>> sorted(zip(whole.cycles.low.tolist(), whole.cycles.high.tolist())), whole.residue
     ([(1.0, 5.0), (2.0, 3.0)], array([0., 9.]))
     """
-    pairs, rest = _reduced(np.concatenate([np.empty(0), *(part.residue for part in parts)]))
-    return Part(joined([*(part.cycles for part in parts), _cycles(pairs)]), rest)
+    pairs, rest = _reduced(stacked([part.residue for part in parts]))
+    return Part(_cycles(pairs, *(part.cycles for part in parts)), rest)
 
 
 def finish(part: Part, close: bool = True) -> Cycles:
@@ -109,16 +109,20 @@ def count(values: ArrayLike, close: bool = True) -> Cycles:
     pairs: list[Pairs] = []
     rests: list[Array] = []
     for start in range(0, x.size, CHUNK):
-        found, peaks, valleys = peel(*peaks_and_valleys(finite(x[start : start + CHUNK])))
+        found, rest = _thinned(x[start : start + CHUNK])
         pairs += found
-        rests.append(interleaved(peaks, valleys))
-    rest = np.concatenate([np.empty(0), *rests])
-    if len(rests) > 1:
-        rest = turning_points(rest)
+        rests.append(rest)
+    return _cycles(pairs, _count_rest(stacked(rests), close))
+
+
+def _thinned(x: Array) -> tuple[list[Pairs], Array]:
+    """Take nested cycles out of a stretch while that is quick: what is left is short, or a deep nest."""
+    pairs, peaks, valleys = peel(*peaks_and_valleys(finite(x)))
+    rest = interleaved(peaks, valleys)
     if rest.size > FEW:
-        found, rest = _reduced(rest)
-        pairs += found
-    return joined([_cycles(pairs), _count_rest(rest, close)])
+        nested, rest = close_nests(rest)
+        pairs += nested
+    return pairs, rest
 
 
 def _reduced(x: Array) -> tuple[list[Pairs], Array]:
@@ -128,31 +132,36 @@ def _reduced(x: Array) -> tuple[list[Pairs], Array]:
     return pairs + nested, rest
 
 
-def _cycles(pairs: list[Pairs]) -> Cycles:
-    low = np.concatenate([np.empty(0), *(low for low, _ in pairs)])
-    high = np.concatenate([np.empty(0), *(high for _, high in pairs)])
-    return Cycles(low, high, np.ones(low.size))
+def _cycles(pairs: list[Pairs], *others: Cycles) -> Cycles:
+    """Return closed cycles, and other tables, as one."""
+    low = stacked([low for low, _ in pairs] + [other.low for other in others])
+    high = stacked([high for _, high in pairs] + [other.high for other in others])
+    whole = np.ones(low.size - sum(len(other) for other in others))
+    return owned(low, high, stacked([whole] + [other.count for other in others]))
 
 
-def _count_rest(points: Array, close: bool) -> Cycles:
-    """Count what is left of a history, turning points of any kind."""
-    if close and points.size > 1:
-        top = int(np.argmax(points))
-        points = turning_points(np.concatenate([points[top:], points[: top + 1]]))
-    if points.size < 2:
+def _count_rest(x: Array, close: bool) -> Cycles:
+    """Count what is left of a history."""
+    if close and x.size:
+        top = int(np.argmax(x))
+        x = np.concatenate([x[top:], x[: top + 1]])
+    if x.size <= FEW:
+        x = turning_points(x)
+        if x.size > 2:
+            found = _by_rainflow(x)
+            # a closed history ends in half cycles that come twice, down and up: whole ones
+            return found.merged() if close else found
+    pairs, residue = _reduced(x)
+    if residue.size < 2:
         return joined([])
-    if 2 < points.size <= FEW:
-        rest = _by_rainflow(points)
-    else:
-        pairs, residue = _reduced(points)
-        low, high = np.minimum(residue[1:], residue[:-1]), np.maximum(residue[1:], residue[:-1])
-        rest = joined([_cycles(pairs), Cycles(low, high, np.full(low.size, 0.5))])
-    # a closed history ends in half cycles that come twice, down and up: whole ones
-    return rest.merged() if close else rest
+    if close:  # from the top down and back to the top
+        return _cycles(pairs, Cycles(residue[1::2], residue[:-1:2], np.ones(residue.size // 2)))
+    ends = residue[1:], residue[:-1]
+    return _cycles(pairs, Cycles(np.minimum(*ends), np.maximum(*ends), np.full(residue.size - 1, 0.5)))
 
 
 def _by_rainflow(points: Array) -> Cycles:
-    """Count with the `rainflow` package, on ranks: exact ties, and no difference can underflow.
+    """Count turning points with the `rainflow` package, on ranks: exact ties, and no difference can underflow.
 
     The package needs at least three points; it gives nothing for two.
     """

@@ -28,9 +28,7 @@ class Cycles:
 
     def __post_init__(self) -> None:
         for name in ("low", "high", "count"):
-            values = np.array(getattr(self, name), dtype=np.float64).reshape(-1)
-            values.setflags(write=False)
-            object.__setattr__(self, name, values)
+            object.__setattr__(self, name, locked(getattr(self, name)))
         if not self.low.size == self.high.size == self.count.size:
             raise ValueError("low, high and count must be equally long")
         if (self.low > self.high).any():
@@ -57,13 +55,13 @@ class Cycles:
     def scaled(self, factor: float) -> Cycles:
         """Return the cycles of the history times a factor; a negative one turns it over."""
         low, high = self.low * factor, self.high * factor
-        return Cycles(np.minimum(low, high), np.maximum(low, high), self.count)
+        return owned(np.minimum(low, high), np.maximum(low, high), self.count)
 
     def per_flight(self, flights: float) -> Cycles:
         """Return the cycles of one flight out of so many."""
         if not flights > 0:
             raise ValueError("flights must be positive")
-        return Cycles(self.low, self.high, self.count / flights)
+        return owned(self.low, self.high, self.count / flights)
 
     def merged(self) -> Cycles:
         """Return the same table with identical pairs joined, largest range first."""
@@ -75,7 +73,7 @@ class Cycles:
         count = np.add.reduceat(self.count[order], first)
         low, high = low[first], high[first]
         largest = np.lexsort((-high, -(high - low)))
-        return Cycles(low[largest], high[largest], count[largest])
+        return owned(low[largest], high[largest], count[largest])
 
     def exceedances(self, levels: ArrayLike) -> Array:
         """Return how many cycles cross each level upward: those with low < level <= high."""
@@ -88,12 +86,29 @@ class Cycles:
         return np.asarray(started - finished)
 
 
+def locked(values: ArrayLike) -> Array:
+    """Return values as one read-only row of float64, copied unless they are that already."""
+    row = np.asarray(values)
+    if row.flags.writeable or row.ndim != 1 or row.dtype != np.float64:
+        row = np.array(values, dtype=np.float64).reshape(-1)
+        row.setflags(write=False)
+    return row
+
+
+def owned(low: Array, high: Array, count: Array) -> Cycles:
+    """Return a table of rows that nobody else holds: they are locked, not copied."""
+    for row in (low, high, count):
+        row.setflags(write=False)
+    return Cycles(low, high, count)
+
+
 def joined(tables: list[Cycles]) -> Cycles:
     """Return several tables as one."""
-    if not tables:
-        return Cycles(np.empty(0), np.empty(0), np.empty(0))
-    return Cycles(
-        np.concatenate([table.low for table in tables]),
-        np.concatenate([table.high for table in tables]),
-        np.concatenate([table.count for table in tables]),
-    )
+    if len(tables) == 1:
+        return tables[0]
+    return owned(*(stacked([getattr(table, name) for table in tables]) for name in ("low", "high", "count")))
+
+
+def stacked(rows: list[Array]) -> Array:
+    """Return rows end to end, an empty one if there are none."""
+    return np.concatenate(rows) if rows else np.empty(0)

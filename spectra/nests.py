@@ -141,19 +141,22 @@ def _first_true(test: Callable[[Index, Index], Flags], start: Index, number: Ind
 
 def _close_one(z: Array, is_peak: Flags, first: int, floor: int, last: int, start: int, stop: int) -> Pairs:
     """Return the cycles of one pit: its peaks from `start` to before `stop`."""
-    left_from, right_from = first + (not is_peak[first]), floor + 1 + (not is_peak[floor + 1])
-    left, right = z[left_from : floor + 1 : 2], z[right_from : last + 1 : 2]
+    left, right = first + (not is_peak[first]), floor + 1 + (not is_peak[floor + 1])
+    left_peaks, right_peaks = z[left : floor + 1 : 2], z[right : last + 1 : 2]
 
-    at = np.arange(start + (not is_peak[start]), min(floor + 1, stop), 2)[::-1]  # rising peaks: quick to search
-    greater = np.searchsorted(np.ascontiguousarray(right), z[at], side="right")
-    low_left = _left_flank_low(z, at, right_from + 2 * greater, greater < right.size)
-    high_left = z[at]
+    begin, end = start + (not is_peak[start]), min(floor + 1, stop)
+    high_left = z[begin:end:2]
+    lower = np.searchsorted(np.ascontiguousarray(right_peaks), high_left[::-1], side="right")[::-1]
+    parting = np.append(z[right - 1 : last : 2], -np.inf).take(lower)
+    low_left = _low(z[begin - 1 : end - 1 : 2], z[begin + 1 : end + 1 : 2], parting)
 
     begin = max(start, floor + 1)
-    at = np.arange(begin + (not is_peak[min(begin, z.size - 1)]), stop, 2)
-    greater = left.size - np.searchsorted(np.ascontiguousarray(left[::-1]), z[at], side="left")
-    low_right = _right_flank_low(z, at, left_from + 2 * (greater - 1), greater > 0)
-    return np.concatenate([low_left, low_right]), np.concatenate([high_left, z[at]])
+    begin += not is_peak[min(begin, z.size - 1)]
+    high_right = z[begin:stop:2]
+    higher = left_peaks.size - np.searchsorted(np.ascontiguousarray(left_peaks[::-1]), high_right, side="left")
+    parting = np.append(-np.inf, z[left + 1 : floor + 2 : 2]).take(higher)
+    low_right = _low(z[begin + 1 : stop + 1 : 2], z[begin - 1 : stop - 1 : 2], parting)
+    return np.concatenate([low_left, low_right]), np.concatenate([high_left, high_right])
 
 
 def _close_together(z: Array, is_peak: Flags, pits: _Pits, start: Index, stop: Index) -> Pairs:
@@ -161,15 +164,25 @@ def _close_together(z: Array, is_peak: Flags, pits: _Pits, start: Index, stop: I
     at, of = _spread(start + ~is_peak[start], np.minimum(pits.floor + 1, stop))
     from_, number = _places(is_peak, pits.floor + 1, pits.last, True)
     greater = _first_true(lambda place, k: z[place] > z[at[k]], from_[of], number[of])
-    low_left = _left_flank_low(z, at, greater, greater <= pits.last[of])
-    high_left = z[at]
+    parting = np.where(greater <= pits.last[of], z[np.minimum(greater - 1, z.size - 1)], -np.inf)
+    low_left, high_left = _low(z[at - 1], z[at + 1], parting), z[at]
 
     begin = np.maximum(start, pits.floor + 1)
     at, of = _spread(begin + ~is_peak[np.minimum(begin, z.size - 1)], stop)
     from_, number = _places(is_peak, pits.first, pits.floor, True)
     greater = _first_true(lambda place, k: z[place] < z[at[k]], from_[of], number[of]) - 2
-    low_right = _right_flank_low(z, at, greater, greater >= pits.first[of])
-    return np.concatenate([low_left, low_right]), np.concatenate([high_left, z[at]])
+    parting = np.where(greater >= pits.first[of], z[greater + 1], -np.inf)
+    low_right, high_right = _low(z[at + 1], z[at - 1], parting), z[at]
+    return np.concatenate([low_left, low_right]), np.concatenate([high_left, high_right])
+
+
+def _low(inner: Array, outer: Array, parting: Array) -> Array:
+    """Return the lows of peaks, given the valleys beside them and the one before the next greater peak across the pit.
+
+    Between a peak and the greater one on its own flank lies the outer valley. Where no peak across is greater, parting
+    is minus infinity.
+    """
+    return np.asarray(np.maximum(inner, np.minimum(outer, parting)))
 
 
 def _spread(begin: Index, stop: Index) -> tuple[Index, Index]:
@@ -178,21 +191,3 @@ def _spread(begin: Index, stop: Index) -> tuple[Index, Index]:
     of = np.repeat(np.arange(begin.size), number)
     nth = np.arange(of.size) - np.repeat(np.cumsum(number) - number, number)
     return begin[of] + 2 * nth, of
-
-
-def _left_flank_low(z: Array, at: Index, greater: Index, there: Flags) -> Array:
-    """Return the lows of left-flank peaks, given the first greater peak of the right flank where there is one."""
-    low = z[at - 1].copy()
-    known = np.flatnonzero(there)
-    i = at[known]
-    low[known] = np.maximum(low[known], np.minimum(z[i + 1], z[greater[known] - 1]))
-    return low
-
-
-def _right_flank_low(z: Array, at: Index, greater: Index, there: Flags) -> Array:
-    """Return the lows of right-flank peaks, given the last peak of the left flank that is not lower, if any."""
-    low = z[at + 1].copy()
-    known = np.flatnonzero(there)
-    i = at[known]
-    low[known] = np.maximum(low[known], np.minimum(z[i - 1], z[greater[known] + 1]))
-    return low
