@@ -5,6 +5,7 @@ from __future__ import annotations
 from textwrap import fill
 
 import spectra
+from fatigue.hole.kinds import fastener_kinds, shank_strengths
 from fatigue.material import library
 from fatigue.references import methods, references
 
@@ -38,7 +39,23 @@ def _fasteners() -> list[str]:
     lines = []
     for name in library.fasteners():
         f = library.fastener(name)
-        lines += [f"  {name}: {f.kind}, E {f.modulus:g} MPa, nu {f.poisson:g}", f"    {f.source} [{f.how}]"]
+        shank = f", {f.alloy}" if f.alloy else ""
+        lines += [
+            f"  {name}: {f.kind}{shank}, E {f.modulus:g} MPa, nu {f.poisson:g}",
+            f"    {f.source} [{f.how}]",
+        ]
+    lines += ["", "  Kinds, for the practice factors, the flexibility formulas and `faying compare --kinds`:"]
+    for kind in fastener_kinds().values():
+        low, high = (100 * fit for fit in kind.usual_fit)
+        lines += [
+            f"  {kind.name}: {kind.words}",
+            f"    usual fit {low:+g} to {high:+g} % of the hole [{kind.fit_source}]",
+            f"    clamps {kind.clamps}; removable: {kind.removable}; needs locking: "
+            f"{'yes' if kind.needs_locking else 'no'}; relative cost {kind.relative_cost} of 5 [{kind.source}]",
+        ]
+    lines += ["", "  Ultimate shear strength of installed shanks:"]
+    for strength in shank_strengths().values():
+        lines.append(f"  {strength.alloy}: {strength.driven_shear:g} MPa, {strength.source} [{strength.how}]")
     return lines
 
 
