@@ -4,13 +4,16 @@ from __future__ import annotations
 
 import json
 import math
+from dataclasses import dataclass
 from pathlib import Path
 
 import numpy as np
 import pandas as pd
 
+from fatigue.hole.installed import Installed, installed
+from fatigue.hole.ring import Expanded, Metal, expand
 from fatigue.hole.summary import HoleSummary, OneHole, factor_against_load
-from reports.figures.hole import draw_edge, draw_factor
+from reports.figures.hole import draw_edge, draw_factor, draw_residual
 from reports.figures.style import new_figure, save, styled
 from reports.tables import csv_text
 from reports.writing import write_files
@@ -20,17 +23,40 @@ FITS = (-0.01, -0.003, 0.0, 0.003, 0.006, 0.01)
 SHARES = np.linspace(0.05, 1.0, 39)
 
 
+@dataclass(frozen=True)
+class Making:
+    """How a hole came to its fit and its residual stress.
+
+    Parameters
+    ----------
+    installed : Installed
+    states : Expanded
+        Of the sheet around it: expanded, let go, filled, and emptied again.
+    """
+
+    installed: Installed
+    states: Expanded
+
+
+def make_hole(one: OneHole, yield_stress: float, cold_expansion: float) -> Making:
+    """Follow the making of a hole in a sheet that may yield."""
+    metal = Metal(one.modulus, one.poisson, yield_stress)
+    made = installed(metal, one.pin_modulus, one.pin_poisson, fit=one.fit, cold_expansion=cold_expansion)
+    shrink = (1 - one.pin_poisson) / one.pin_modulus
+    return Making(made, expand(metal, cold_expansion, max(one.fit, 0.0), shrink))
+
+
 def edge_frame(hole: HoleSummary) -> pd.DataFrame:
     """Return hoop stress and pressure around the half edge."""
     return pd.DataFrame({"angle_deg": hole.angle, "hoop_MPa": hole.hoop, "pressure_MPa": hole.pressure})
 
 
-def as_csv(one: OneHole, hole: HoleSummary) -> str:
+def as_csv(one: OneHole, hole: HoleSummary, making: Making | None = None) -> str:
     """Return the stresses around the edge as CSV."""
     return csv_text(edge_frame(hole))
 
 
-def as_json(one: OneHole, hole: HoleSummary) -> str:
+def as_json(one: OneHole, hole: HoleSummary, making: Making | None = None) -> str:
     """Return the summary and the stresses around the edge as JSON; null where nothing touches."""
     return json.dumps(
         {
@@ -42,7 +68,9 @@ def as_json(one: OneHole, hole: HoleSummary) -> str:
             "contact_to_deg": _number(hole.contact_to),
             "open_factor": hole.open_factor,
             "bending": hole.bending if one.bend else None,
-            "flags": list(hole.flags),
+            "residual_MPa": making.installed.residual_hoop if making else None,
+            "fit_percent": 100 * one.fit,
+            "flags": [*hole.flags, *(making.installed.flags if making else ())],
             "edge": edge_frame(hole).to_dict(orient="records"),
         },
         indent=2,
@@ -54,7 +82,7 @@ def _number(value: float) -> float | None:
     return None if math.isnan(value) else round(value, 6)
 
 
-def as_table(one: OneHole, hole: HoleSummary) -> str:
+def as_table(one: OneHole, hole: HoleSummary, making: Making | None = None) -> str:
     """Return the summary and every fifteenth degree of the edge as a table."""
     around = {"row": "in a row of holes", "strip": "in a strip of its own", "wide": "in a wide sheet"}[one.edge]
     size = f"{one.diameter:g} mm hole {around}" + ("" if one.edge == "wide" else f", {one.width:g} mm wide")
@@ -79,15 +107,23 @@ def as_table(one: OneHole, hole: HoleSummary) -> str:
     if one.bend:
         way = "the pin resists the ovalling" if hole.bending == "resisted" else "added outside the contact"
         lines.append(f"  bending           {way}: the higher peak of the two ways")
-    lines += [f"  flag: {flag}" for flag in hole.flags]
+    if making is not None:
+        made = making.installed
+        lines.append(
+            f"  making            fit {100 * made.nominal_fit:+g} % presses like {100 * made.fit:+.3g} %; yielded to "
+            f"{made.plastic_zone:.2f} radii; residual hoop stress at the edge {made.residual_hoop + 0.0:.0f} MPa, "
+            "to be added"
+        )
+    flags = [*hole.flags, *(making.installed.flags if making else ())]
+    lines += [f"  flag: {flag}" for flag in flags]
     lines += ["", "  deg   hoop MPa   pressure MPa"]
     for k in range(0, hole.angle.size, 15):
         lines.append(f"  {hole.angle[k]:3.0f}   {hole.hoop[k]:8.1f}   {hole.pressure[k]:12.1f}")
     return "\n".join(lines)
 
 
-def write_figures(one: OneHole, hole: HoleSummary, folder: Path) -> list[Path]:
-    """Draw the stresses around the edge, and the factor against load for several fits."""
+def write_figures(one: OneHole, hole: HoleSummary, folder: Path, making: Making | None = None) -> list[Path]:
+    """Draw the stresses around the edge, the factor against load for several fits, and what the making left."""
     with styled():
         edge = new_figure(6.6, 4.0)
         draw_edge(edge.subplots(), hole)
@@ -97,6 +133,10 @@ def write_figures(one: OneHole, hole: HoleSummary, folder: Path) -> list[Path]:
             factor = new_figure(6.6, 4.0)
             draw_factor(factor.subplots(), SHARES, fits, factor_against_load(one, fits, SHARES), one.fit)
             figures["hole_factor"] = factor
+        if making is not None:
+            residual = new_figure(6.6, 4.0)
+            draw_residual(residual.subplots(), making.states)
+            figures["hole_residual"] = residual
 
     def fill(place: Path) -> None:
         for name, figure in figures.items():

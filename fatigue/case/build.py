@@ -10,6 +10,7 @@ from fatigue.case import schema
 from fatigue.case.checks import cross_checks
 from fatigue.case.reader import Tables, digest, parse_tables, parse_toml, read_text
 from fatigue.hole.practice import practice_factors
+from fatigue.hole.squeeze import head_ratio_of_force
 from fatigue.joint import joint_faults
 from fatigue.material import library
 from fatigue.material.curves import CurveFamily
@@ -157,7 +158,7 @@ def _splice(tables: Tables, table: schema.SpliceTable) -> Splice:
             hole_diameter=row.hole_mm,
             pitch=row.pitch_mm or table.pitch_mm,
             fastener=fastener,
-            hole=_hole(row.hole, hole, fastener),
+            hole=_hole(row.hole, hole, fastener, row.hole_mm),
             countersink=Countersink(sheet_names.index(sink.sheet), sink.depth_mm) if sink else None,
             flexibility=row.flexibility_mm_per_N or table.flexibility_mm_per_N,
             head_fixity=row.head_fixity,
@@ -213,15 +214,17 @@ def _fastener(name: str, table: schema.FastenerTable) -> Fastener:
     )
 
 
-def _hole(name: str, table: schema.HoleTable, fastener: Fastener) -> HoleCondition:
+def _hole(name: str, table: schema.HoleTable, fastener: Fastener, diameter: float) -> HoleCondition:
     usual = practice_factors(fastener.kind, table.cold_expansion_percent > 0.0)
     given = table.practice
     own = given.hole is not None or given.filling is not None
+    force = table.squeeze_force_N
+    ratio = table.squeeze_ratio if force is None else head_ratio_of_force(force, diameter)
     return HoleCondition(
         name=name,
         fit_percent=table.fit_percent,
         cold_expansion_percent=table.cold_expansion_percent,
-        squeeze_ratio=table.squeeze_ratio,
+        squeeze_ratio=ratio,
         friction=table.friction,
         practice=Practice(
             hole=given.hole if given.hole is not None else usual.hole,

@@ -27,6 +27,9 @@ def cross_checks(tables: Tables, folder: Path) -> Iterator[Fault]:
     for position, sheet in enumerate(tables.sheets, start=1):
         if sheet is not None:
             yield from _sheet(sheet, f'sheet[{position}] "{sheet.name}"', tables, folder)
+    for name, hole in tables.holes.items():
+        if hole is not None and hole.squeeze_ratio is not None and hole.squeeze_force_N is not None:
+            yield Fault(f"hole.{name}", "squeeze_ratio and squeeze_force_N are both given.", "Give one of the two.")
     for name, material in tables.materials.items():
         if material is not None:
             yield from _curve(material.curve, f"material.{name}.curve", folder)

@@ -120,6 +120,7 @@ class HoleTable(Table):
     fit_percent: Annotated[float, Field(ge=-5, le=5)] | None = None
     cold_expansion_percent: Annotated[float, Field(ge=0, le=10)] = 0.0
     squeeze_ratio: Annotated[float, Field(ge=1, le=3)] | None = None
+    squeeze_force_N: Annotated[float, Field(gt=0, le=1e7)] | None = None
     friction: Annotated[float, Field(ge=0, le=0.5)] = 0.0
     practice: PracticeTable = Field(default_factory=PracticeTable)
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from dataclasses import replace
 from pathlib import Path
 from typing import Any, Literal
 
@@ -21,6 +22,7 @@ QUANTITIES = {
     "bend": ("MPa", "Bending stress at the surface."),
     "modulus": ("MPa", "Sheet's modulus; 72 000 MPa if left out."),
     "pin-modulus": ("MPa", "Pin's modulus; the sheet's if left out."),
+    "yield": ("MPa", "Sheet's yield stress: follow the hole's making, which may yield it; elastic if left out."),
 }
 """Name, SI unit and help of every option that comes in two units."""
 USUAL_MODULUS = 72e3
@@ -52,6 +54,14 @@ def in_either_unit(function: Callable[..., Any]) -> Callable[..., Any]:
     show_default=True,
     help="Diametral interference, % of the hole; negative is clearance.",
 )
+@click.option(
+    "--cold-expansion-percent",
+    "cold_expansion",
+    type=float,
+    default=0.0,
+    show_default=True,
+    help="Mandrel expansion before the pin goes in; needs the yield stress.",
+)
 @click.option("--poisson", type=float, default=0.33, show_default=True, help="Sheet's Poisson ratio.")
 @click.option("--pin-poisson", type=float, default=0.33, show_default=True, help="Pin's Poisson ratio.")
 @click.option("--friction", type=float, default=0.0, show_default=True, help="Coefficient, as a stated multiplier.")
@@ -68,6 +78,7 @@ def in_either_unit(function: Callable[..., Any]) -> Callable[..., Any]:
 def hole(
     edge: Literal["row", "strip", "wide"],
     fit_percent: float,
+    cold_expansion: float,
     poisson: float,
     pin_poisson: float,
     friction: float,
@@ -78,7 +89,7 @@ def hole(
     """Solve one hole: peak stress, range factor and contact under bypass, bearing and bending."""
     from fatigue.hole.concentration import bending_thin_sheet
     from fatigue.hole.summary import OneHole, hole_faults, hole_summary
-    from reports.holes import as_csv, as_json, as_table, write_figures
+    from reports.holes import as_csv, as_json, as_table, make_hole, write_figures
 
     value = _in_si(given, needed=("hole",) if edge == "wide" else ("hole", "pitch"))
     diameter, modulus = value["hole"] or 0.0, value["modulus"] or USUAL_MODULUS
@@ -101,12 +112,22 @@ def hole(
     faults = [Fault(f"--{fault.where.replace('_', '-')}", fault.problem, fault.remedy) for fault in hole_faults(one)]
     if not (one.bypass or one.bearing or one.bend or one.fit):
         faults.append(Fault("", "no load and no fit: nothing happens.", "Give --bypass-MPa, --bearing-MPa or both."))
+    if not 0 <= cold_expansion <= 10:
+        faults.append(Fault("--cold-expansion-percent", f"{cold_expansion:g} given; allowed is 0 to 10.", ""))
+    elif cold_expansion > 0 and value["yield"] is None:
+        faults.append(Fault("--yield", "is missing: expansion yields the hole.", "Give --yield-MPa or --yield-ksi."))
+    if value["yield"] is not None and not value["yield"] > 0:
+        faults.append(Fault("--yield", f"{value['yield']:g} given; it must be above 0.", ""))
     if faults:
         raise InputFaults("faying hole", faults)
+    making = None
+    if value["yield"] is not None:
+        making = make_hole(one, value["yield"], cold_expansion / 100)
+        one = replace(one, fit=making.installed.fit)
     summary = hole_summary(one)
-    click.echo({"table": as_table, "csv": as_csv, "json": as_json}[form](one, summary).rstrip("\n"))
+    click.echo({"table": as_table, "csv": as_csv, "json": as_json}[form](one, summary, making).rstrip("\n"))
     if out is not None:
-        written = write_figures(one, summary, out)
+        written = write_figures(one, summary, out, making)
         names = ", ".join(path.name for path in written)
         click.echo(f"Written to {plain(str(out))}: {names}", err=form != "table")
 

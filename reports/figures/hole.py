@@ -8,6 +8,7 @@ import numpy as np
 from matplotlib.axes import Axes
 from numpy.typing import ArrayLike
 
+from fatigue.hole.ring import Expanded
 from fatigue.hole.summary import HoleSummary
 from reports.figures.style import FAINT, INK, MARK, SOFT, note
 
@@ -72,4 +73,32 @@ def draw_factor(ax: Axes, shares: ArrayLike, fits: Sequence[float], factors: Arr
     ax.set_xlabel("load [% of the full load]")
     ax.set_ylabel("rise of hoop stress over gross stress")
     ax.grid(visible=True)
+    return ax
+
+
+def draw_residual(ax: Axes, states: Expanded) -> Axes:
+    """Draw hoop stress from the edge outwards: with the pin in, and what stays when it is taken out."""
+    shown = states.filled.radius <= 4.0
+    for state, colour, line, words in (
+        (states.filled, SOFT, (0, (4, 2)), "pin in place, no load"),
+        (states.residual, INK, "-", "residual: the pin's pressure taken off"),
+    ):
+        ax.plot(state.radius[shown], state.hoop[shown], color=colour, ls=line, lw=1.8, label=words)
+    ax.plot(1.0, states.residual.edge_hoop, ls="none", marker="o", ms=8, mfc="none", mec=MARK, mew=1.8)
+    ax.annotate(
+        f"{states.residual.edge_hoop:.0f} MPa at the edge",
+        (1.0, states.residual.edge_hoop),
+        xytext=(46, 0),
+        textcoords="offset points",
+        color=MARK,
+        fontsize=9,
+        va="center",
+    )
+    ax.axhline(0.0, color=FAINT, lw=0.8, zorder=0)
+    ax.axvspan(1.0, states.filled.zone, color="#f1f3f5", zorder=0)
+    ax.text(states.filled.zone, 0.5, "  yielded to here", transform=ax.get_xaxis_transform(), va="top", fontsize=8)
+    ax.set_xlim(0.97, 4.0)
+    ax.set_xlabel("distance from the hole's centre [radii]")
+    ax.set_ylabel("hoop stress [MPa]")
+    ax.legend(loc="lower right", fontsize=8)
     return ax
