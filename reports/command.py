@@ -16,6 +16,7 @@ COMMANDS = {
     "hole": "Solve one hole: peak stress, range factor and contact.",
     "new": "Write a commented starter case.",
     "count": "Count a recorded history's rainflow cycles.",
+    "evidence": "Compute every published check now, beside the printed value.",
     "sources": "Print materials, fasteners, curves, spectra and methods with where they come from.",
 }
 """Each in a module of its name in `reports.commands`, as a function of its name; here with its line of help."""

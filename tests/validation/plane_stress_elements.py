@@ -21,7 +21,7 @@ from scipy.optimize import brentq, nnls
 from skfem import Basis, BilinearForm, ElementQuad2, ElementVector, FacetBasis, LinearForm, MeshQuad, MeshQuad2
 from skfem.helpers import ddot, eye, sym_grad, trace
 
-STORED = Path(__file__).parent / "data" / "pin_in_hole_elements.csv"
+STORED = Path(__file__).parents[2] / "reports" / "evidence" / "data" / "pin_in_hole_elements.csv"
 SHEET = (72e3, 0.33)
 PINS = {"aluminium": (72e3, 0.33), "steel": (205e3, 0.30)}
 COLUMNS = ["edge", "width_ratio", "end_ratio", "pin"]

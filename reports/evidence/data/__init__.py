@@ -1,0 +1,1 @@
+"""Results of elements, stored."""
