@@ -54,8 +54,8 @@ class InputFaults(ValueError):
 
 
 def show(value: Any, limit: int = 60) -> str:
-    """Show a given value on one short line."""
-    text = " ".join(repr(value).split())
+    """Show a given value on one short line, true and false as a file has them."""
+    text = str(value).lower() if isinstance(value, bool) else " ".join(repr(value).split())
     return text if len(text) <= limit else text[: limit - 3] + "..."
 
 

@@ -10,7 +10,7 @@ import spectra
 from fatigue.case import schema
 from fatigue.case.reader import Tables
 from fatigue.material import library
-from spectra.faults import Fault, did_you_mean, listed
+from spectra.faults import Fault, InputFaults, did_you_mean, listed
 
 ROLES = {"one-strap": ("main", "strap"), "two-strap": ("main", "strap"), "doubler": ("skin", "doubler")}
 
@@ -33,6 +33,12 @@ def cross_checks(tables: Tables, folder: Path) -> Iterator[Fault]:
     for name, material in tables.materials.items():
         if material is not None:
             yield from _curve(material.curve, f"material.{name}.curve", folder)
+            if material.ultimate_MPa is not None and material.ultimate_MPa < material.yield_MPa:
+                yield Fault(
+                    f"material.{name}.ultimate_MPa",
+                    f"{material.ultimate_MPa:g} MPa is below the yield stress of {material.yield_MPa:g} MPa.",
+                    "Swap them, or leave ultimate_MPa out.",
+                )
 
 
 def _loads(loads: schema.LoadsTable | None, folder: Path) -> Iterator[Fault]:
@@ -62,6 +68,8 @@ def _loads(loads: schema.LoadsTable | None, folder: Path) -> Iterator[Fault]:
             f'"{loads.spectrum}" is neither a shipped spectrum nor a file.',
             did_you_mean(loads.spectrum, spectra.shipped()),
         )
+    elif loads.spectrum is not None:
+        yield from _spectrum(loads, folder / loads.spectrum if own else loads.spectrum)
     if loads.factors and loads.spectrum is None:
         yield Fault("loads.factors", "factors combine the channels of a spectrum.", "Leave them out here.")
     if loads.history is not None and not (folder / loads.history.file).exists():
@@ -70,6 +78,18 @@ def _loads(loads: schema.LoadsTable | None, folder: Path) -> Iterator[Fault]:
             f'there is no file "{loads.history.file}".',
             "Paths are taken from the folder of the case file.",
         )
+
+
+def _spectrum(loads: schema.LoadsTable, name: str | Path) -> Iterator[Fault]:
+    try:
+        channels = spectra.read_spectrum(name).channels
+    except InputFaults as error:
+        yield from (
+            Fault(f"{error.source} {fault.where}".rstrip(), fault.problem, fault.remedy) for fault in error.faults
+        )
+        return
+    for channel in loads.factors:
+        yield from _known(channel, channels, f"loads.factors.{channel}", "channel")
 
 
 def _names(tables: Tables) -> Iterator[Fault]:
@@ -250,4 +270,4 @@ def _curve(name: str, where: str, folder: Path) -> Iterator[Fault]:
 def _known(name: str, known: Iterable[str], where: str, what: str) -> Iterator[Fault]:
     known = list(known)
     if name not in known:
-        yield Fault(where, f'there is no {what} "{name}".', did_you_mean(name, known))
+        yield Fault(where, f'there is no {what} "{name}".', did_you_mean(name, known) or f"There is no {what} at all.")

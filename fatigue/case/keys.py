@@ -12,7 +12,12 @@ from spectra.units import pair_of, split_unit, to_si
 
 
 def to_si_keys(
-    table: dict[str, Any], model: type[BaseModel], where: str, faults: list[Fault], faulty: set[str]
+    table: dict[str, Any],
+    model: type[BaseModel],
+    where: str,
+    faults: list[Fault],
+    faulty: set[str],
+    written: dict[str, tuple[str, Any]],
 ) -> dict[str, Any]:
     """Return a copy of a table with SI keys, as deep as the model goes.
 
@@ -28,6 +33,8 @@ def to_si_keys(
         Faults found are appended.
     faulty : set of str
         Paths that were reported here, so that nobody reports them again.
+    written : dict
+        Filled with the key's path and value as they stand in the file, by the path of the SI key.
     """
     fields = model.model_fields
     out: dict[str, Any] = {}
@@ -53,7 +60,9 @@ def to_si_keys(
             faults.append(Fault(path, f"{split_unit(key)[0]} is given in both units.", "Keep one of them."))
             faulty.add(f"{where}.{si_key}")
             continue
-        out[si_key] = _nested(_convert(value, unit), fields[si_key].annotation, path, faults, faulty)
+        if unit is not None:
+            written[f"{where}.{si_key}"] = (path, value)
+        out[si_key] = _nested(_convert(value, unit), fields[si_key].annotation, path, faults, faulty, written)
     return out
 
 
@@ -72,27 +81,34 @@ def _convert(value: Any, unit: str | None) -> Any:
     return to_si(float(value), unit)
 
 
-def _nested(value: Any, annotation: Any, path: str, faults: list[Fault], faulty: set[str]) -> Any:
+def _nested(
+    value: Any,
+    annotation: Any,
+    path: str,
+    faults: list[Fault],
+    faulty: set[str],
+    written: dict[str, tuple[str, Any]],
+) -> Any:
     """Go into tables and lists of tables."""
-    model = _model_of(annotation)
+    model = model_of(annotation)
     if model is None:
         return value
     if isinstance(value, dict):
-        return to_si_keys(value, model, path, faults, faulty)
+        return to_si_keys(value, model, path, faults, faulty, written)
     if isinstance(value, list):
         return [
-            to_si_keys(item, model, f"{path}[{i}]", faults, faulty) if isinstance(item, dict) else item
+            to_si_keys(item, model, f"{path}[{i}]", faults, faulty, written) if isinstance(item, dict) else item
             for i, item in enumerate(value, start=1)
         ]
     return value
 
 
-def _model_of(annotation: Any) -> type[BaseModel] | None:
+def model_of(annotation: Any) -> type[BaseModel] | None:
     """Return the table model inside an annotation such as ``list[Model] | None``."""
     if isinstance(annotation, type) and issubclass(annotation, BaseModel):
         return annotation
     if get_origin(annotation) in (Union, UnionType, list) or hasattr(annotation, "__metadata__"):
         for argument in get_args(annotation):
-            if argument is not NoneType and (model := _model_of(argument)) is not None:
+            if argument is not NoneType and (model := model_of(argument)) is not None:
                 return model
     return None

@@ -78,15 +78,16 @@ def parse_tables(raw: dict[str, Any], faults: list[Fault]) -> Tables:
         if key not in known:
             faults.append(Fault(key, "is not a table of a case file.", did_you_mean(key, known)))
     for key in schema.REQUIRED:
-        if key not in raw:
-            shape = {"title": 'title = "..."'}.get(key, f"[[{key}]]" if key in schema.LISTED else f"[{key}]")
+        # that there are no sheets or rows is found where they are counted
+        if key not in raw and key not in schema.LISTED:
+            shape = {"title": 'title = "..."'}.get(key, f"[{key}]")
             faults.append(Fault(key, "is missing.", f"Add {shape}; `faying new` writes a starter with all of them."))
     title = raw.get("title", "")
-    if isinstance(title, str):
+    if isinstance(title, str) and (title.strip() or "title" not in raw):
         tables.title = title
         tables.echo["title"] = title
     else:
-        faults.append(Fault("title", f'{show(title)} must be text, written "like this".'))
+        faults.append(Fault("title", f'{show(title)} must be text, written "like this", and not empty.'))
     for key, model in schema.SINGLE.items():
         if key in raw or key not in schema.REQUIRED:
             setattr(tables, key, _table(raw.get(key, {}), model, key, faults, tables.echo))
@@ -103,12 +104,13 @@ def _table(given: Any, model: type[T], where: str, faults: list[Fault], echo: di
         return None
     own: list[Fault] = []
     faulty: set[str] = set()
-    si = to_si_keys(given, model, where, own, faulty)
+    written: dict[str, tuple[str, Any]] = {}
+    si = to_si_keys(given, model, where, own, faulty, written)
     echo[where.rsplit(".", 1)[-1]] = si
     try:
         parsed = model.model_validate(si)
     except ValidationError as error:
-        own += faults_of(error, model, where, faulty)
+        own += faults_of(error, model, where, faulty, written)
         parsed = None
     faults += own
     return None if own else parsed
@@ -117,7 +119,7 @@ def _table(given: Any, model: type[T], where: str, faults: list[Fault], echo: di
 def _listed(given: Any, model: type[T], key: str, faults: list[Fault], echo: dict[str, Any]) -> list[T | None]:
     if not isinstance(given, list):
         faults.append(Fault(key, "must be an array of tables.", f"Write [[{key}]] with two brackets."))
-        return []
+        return [None, None]  # something was given: that there is none of it is not to be said as well
     parsed: list[T | None] = []
     copies: list[Any] = []
     for position, item in enumerate(given, start=1):
