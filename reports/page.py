@@ -10,12 +10,13 @@ from jinja2 import Environment, PackageLoader, StrictUndefined
 from markupsafe import Markup
 
 from fatigue.cautions import CAUTIONS
-from fatigue.fits import FitCurves
 from fatigue.life import Estimate
 from fatigue.references import methods, references
+from reports.beside import Beside
 from reports.figures.style import life_text
 from reports.fit_words import fit_story
 from reports.tables import answer, in_unit, share_text, threshold_text, versions
+from reports.why import why_first
 
 LABELS = {
     "critical_row": "Section through the splice and stress make-up by location",
@@ -34,14 +35,14 @@ def inline(svg: str, label: str) -> Markup:
     return Markup('<svg role="img" aria-label="{}"').format(label) + Markup(body)
 
 
-def report_html(estimate: Estimate, curves: FitCurves, drawings: Mapping[str, str], inch: bool = False) -> str:
+def report_html(estimate: Estimate, beside: Beside, drawings: Mapping[str, str], inch: bool = False) -> str:
     """Return the whole report as HTML.
 
     Parameters
     ----------
     estimate : Estimate
-    curves : FitCurves
-        Life against fit.
+    beside : Beside
+        What stands beside the estimate.
     drawings : mapping
         The figures of `case_figures` as SVG.
     inch : bool
@@ -49,6 +50,7 @@ def report_html(estimate: Estimate, curves: FitCurves, drawings: Mapping[str, st
     """
     shown = in_unit(estimate.rows, inch)
     names = dict(zip(estimate.rows.columns, shown.columns, strict=True))
+    conditions, formulas = in_unit(beside.conditions, inch), in_unit(beside.formulas, inch)
     flagged: dict[str, list[str]] = {}
     for _, line in estimate.rows.iterrows():
         for flag in filter(None, str(line["flags"]).split("; ")):
@@ -63,7 +65,14 @@ def report_html(estimate: Estimate, curves: FitCurves, drawings: Mapping[str, st
         digits=1 if inch else 0,
         route=estimate.case.life.credit,
         figure={name: inline(drawings[name], label) for name, label in LABELS.items()},
-        story=fit_story(estimate, curves),
+        why=why_first(estimate),
+        story=fit_story(estimate, beside.fits),
+        conditions=conditions.to_dict(orient="records"),
+        con=dict(zip(beside.conditions.columns, conditions.columns, strict=True)),
+        formulas=formulas.to_dict(orient="records"),
+        fcol=dict(zip(beside.formulas.columns, formulas.columns, strict=True)),
+        free_body=estimate.joint.free_body,
+        compressive=bool(estimate.local.levels[0] < 0.0),
         load_name=estimate.loads.name,
         load_notes=estimate.loads.notes,
         cycles=estimate.loads.cycles.total,

@@ -8,8 +8,8 @@ import tempfile
 from collections.abc import Callable
 from pathlib import Path
 
-from fatigue.fits import fit_curves
 from fatigue.life import Estimate
+from reports.beside import set_beside
 from reports.figures.sheets import case_figures
 from reports.figures.style import save, svg_text
 from reports.page import report_html
@@ -45,14 +45,14 @@ def write(
     InputFaults
         If the folder cannot be written to; files that were there stay as they were.
     """
-    curves = fit_curves(estimate, on_progress=on_progress)
-    figures = case_figures(estimate, curves)
+    beside = set_beside(estimate, on_progress)
+    figures = case_figures(estimate, beside.fits)
     drawings = {name: svg_text(figure) for name, figure in figures.items()}
     texts = {
         "rows.csv": csv_text(in_unit(estimate.rows, inch)),
         "cycles.csv": csv_text(in_unit(cycles_frame(estimate), inch)),
         "result.json": result_json(estimate, inch),
-        "report.html": report_html(estimate, curves, drawings, inch),
+        "report.html": report_html(estimate, beside, drawings, inch),
         **{f"{name}.svg": text for name, text in drawings.items()},
     }
 
