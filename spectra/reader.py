@@ -10,6 +10,8 @@ from importlib import resources
 from pathlib import Path
 from typing import Any
 
+from spectra.exceedance_keys import KEYS as EXCEEDANCE_KEYS
+from spectra.exceedance_keys import exceedance_faults, exceeded_of
 from spectra.faults import Fault, InputFaults, did_you_mean, show
 from spectra.spectrum import Phase, Spectrum
 from spectra.units import split_unit, to_si
@@ -29,7 +31,8 @@ CHANNEL_KEYS = (
     "thickness_in",
     "share",
 )
-PHASE_KEYS = ("name", "steady", "repeated", "amplitude", "cycles")
+FLIGHT_KEYS = ("name", "number", "severity")
+PHASE_KEYS = ("name", "steady", "repeated", "amplitude", "cycles", *EXCEEDANCE_KEYS)
 
 
 @cache
@@ -69,10 +72,11 @@ def read_spectrum(name_or_path: str | Path) -> Spectrum:
     """
     name = str(name_or_path)
     if name in _shipped_files():
-        text, stem = _shipped_files()[name], name
+        text, stem, folder = _shipped_files()[name], name, Path()
     else:
         try:
-            text, stem = Path(name_or_path).read_bytes().decode("utf-8"), Path(name_or_path).stem
+            path = Path(name_or_path)
+            text, stem, folder = path.read_bytes().decode("utf-8"), path.stem, path.parent
         except FileNotFoundError:
             raise InputFaults(name, [Fault("", "there is no such spectrum.", did_you_mean(name, shipped()))]) from None
         except (OSError, UnicodeDecodeError) as error:
@@ -81,13 +85,14 @@ def read_spectrum(name_or_path: str | Path) -> Spectrum:
         raw = tomllib.loads(text)
     except (tomllib.TOMLDecodeError, RecursionError) as error:
         raise InputFaults(name, [Fault("", f"not valid TOML: {error}.")]) from None
-    faults = list(_faults(raw))
+    faults = list(_faults(raw, folder))
     if faults:
         raise InputFaults(name, faults)
-    return _build(raw, stem)
+    return _build(raw, stem, folder)
 
 
-def _build(raw: dict[str, Any], name: str) -> Spectrum:
+def _build(raw: dict[str, Any], name: str, folder: Path) -> Spectrum:
+    flights = sum(entry["number"] for entry in raw["flight"])
     phases = tuple(
         Phase(
             name=entry["name"],
@@ -95,6 +100,7 @@ def _build(raw: dict[str, Any], name: str) -> Spectrum:
             repeated=entry.get("repeated", ""),
             amplitude=tuple(float(value) for value in entry.get("amplitude", ())),
             cycles={kind: tuple(numbers) for kind, numbers in entry.get("cycles", {}).items()},
+            exceeded=exceeded_of(entry, folder, flights) if _has_exceedances(entry) else None,
         )
         for entry in raw["phase"]
     )
@@ -107,6 +113,7 @@ def _build(raw: dict[str, Any], name: str) -> Spectrum:
         channels={channel: _stress_per_unit(table) for channel, table in raw["channel"].items()},
         phases=phases,
         notes=tuple(notes),
+        severity={entry["name"]: float(entry["severity"]) for entry in raw["flight"] if "severity" in entry},
     )
 
 
@@ -121,7 +128,7 @@ def _stress_per_unit(table: dict[str, Any]) -> float:
     return float(table.get("share", 1.0)) * pressure * size["radius"] / size["thickness"]
 
 
-def _faults(raw: dict[str, Any]) -> Iterator[Fault]:
+def _faults(raw: dict[str, Any], folder: Path) -> Iterator[Fault]:
     for key in raw:
         if key not in FILE_KEYS:
             yield Fault(key, "is not a key of a spectrum file.", did_you_mean(key, FILE_KEYS))
@@ -153,8 +160,13 @@ def _faults(raw: dict[str, Any]) -> Iterator[Fault]:
         else:
             kinds[entry["name"]] = entry["number"]
             for key in entry:
-                if key not in ("name", "number"):
-                    yield Fault(f"{where}.{key}", "is not a key of a flight.", did_you_mean(key, ("name", "number")))
+                if key not in FLIGHT_KEYS:
+                    yield Fault(f"{where}.{key}", "is not a key of a flight.", did_you_mean(key, FLIGHT_KEYS))
+            severity = entry.get("severity", 1.0)
+            if not _number(severity) or not 0.1 <= severity <= 10:
+                yield Fault(
+                    f"{where}.severity", f"{show(severity)} must be from 0.1 to 10.", "1 is the average flight."
+                )
     phases = raw.get("phase")
     if not isinstance(phases, list) or not phases:
         yield Fault("phase", "is missing.", "Give at least one [[phase]], in the order flown.")
@@ -164,9 +176,14 @@ def _faults(raw: dict[str, Any]) -> Iterator[Fault]:
         if not isinstance(entry, dict):
             yield Fault(f"phase[{position}]", "must be a table.")
             continue
-        own = list(_phase_faults(entry, f"phase[{position}]", list(channels), list(kinds)))
+        where = f"phase[{position}]"
+        own = list(_phase_faults(entry, where, list(channels), list(kinds)))
+        if _has_exceedances(entry):
+            own += exceedance_faults(entry, where, folder, sum(kinds.values()))
         yield from own
-        if not own:
+        if not own and _has_exceedances(entry):
+            points += 2 * int(exceeded_of(entry, folder, sum(kinds.values())).flown()[2][-1])
+        elif not own:
             points += sum(
                 number * max(1, 2 * sum(entry.get("cycles", {}).get(kind, ()))) for kind, number in kinds.items()
             )
@@ -214,17 +231,23 @@ def _phase_faults(entry: dict[str, Any], where: str, channels: list[str], kinds:
         if not _number(value):
             yield Fault(f"{where}.steady.{channel}", f"{show(value)} must be a finite number.")
     loads = [key for key in ("repeated", "amplitude", "cycles") if key in entry]
+    if _has_exceedances(entry) and "repeated" not in entry:
+        yield Fault(f"{where}.repeated", "is missing.", "Name the channel that the exceedances move.")
+        return
     if not loads:
         return
-    if len(loads) < 3:
-        yield Fault(where, "repeated loads need repeated, amplitude and cycles.", "Give all three or none.")
-        return
-    if entry["repeated"] not in channels:
+    if entry.get("repeated", "") not in channels and "repeated" in entry:
         yield Fault(
             f"{where}.repeated",
             f"{show(entry['repeated'])} is not a channel.",
             did_you_mean(str(entry["repeated"]), channels),
         )
+    if _has_exceedances(entry):
+        return
+    if len(loads) < 3:
+        remedy = "Give all three or none; or repeated and exceedances or gust."
+        yield Fault(where, "repeated loads need repeated, amplitude and cycles.", remedy)
+        return
     levels = entry["amplitude"]
     if not isinstance(levels, list) or not levels or not all(_number(v) and v > 0 for v in levels):
         yield Fault(f"{where}.amplitude", f"{show(levels)} must be a list of positive numbers.")
@@ -242,6 +265,10 @@ def _phase_faults(entry: dict[str, Any], where: str, channels: list[str], kinds:
             yield Fault(
                 f"{where}.cycles.{kind}", f"{len(numbers)} numbers for {len(levels)} amplitudes.", "Give one for each."
             )
+
+
+def _has_exceedances(entry: dict[str, Any]) -> bool:
+    return any(key in entry for key in EXCEEDANCE_KEYS)
 
 
 def _number(value: Any) -> bool:
