@@ -28,10 +28,23 @@ class Reference:
 
 @dataclass(frozen=True)
 class Method:
-    """A method of an estimate."""
+    """A method of an estimate.
+
+    Parameters
+    ----------
+    name, stage, formula, range : str
+    keys : tuple of str
+        Of the bibliography.
+    code : str
+        Where it is computed.
+    evidence : str
+        Subject of the published checks that hold it; empty where only laws and closed forms in the tests do.
+    """
 
     name: str
     stage: str
+    code: str
+    evidence: str
     formula: str
     keys: tuple[str, ...]
     range: str
@@ -51,4 +64,7 @@ def references() -> dict[str, Reference]:
 def methods() -> tuple[Method, ...]:
     """Return the methods in the order an estimate uses them."""
     raw = tomllib.loads(HERE.joinpath("methods.toml").read_text(encoding="utf-8"))
-    return tuple(Method(e["name"], e["stage"], e["formula"], tuple(e["keys"]), e["range"]) for e in raw["method"])
+    return tuple(
+        Method(e["name"], e["stage"], e["code"], e["evidence"], e["formula"], tuple(e["keys"]), e["range"])
+        for e in raw["method"]
+    )

@@ -87,6 +87,40 @@ def _methods() -> list[str]:
     lines = []
     for m in methods():
         lines += [f"  {m.name} ({m.stage})", fill(m.formula, 96, initial_indent="    ", subsequent_indent="      ")]
+        proof = f"evidence: faying evidence --subject '{m.evidence}'" if m.evidence else "evidence: laws in the tests"
+        lines += [f"    code: {m.code}; {proof}"]
         lines += [fill(f"range: {m.range}", 96, initial_indent="    ", subsequent_indent="      ")]
         lines += [fill(str(references()[key]), 96, initial_indent="    ", subsequent_indent="      ") for key in m.keys]
     return lines
+
+
+def theory_text() -> str:
+    """Return the methods as a short page of theory, in Markdown."""
+    lines = [
+        "# What faying computes",
+        "",
+        "Written by `python -m tests.golden.samples` from the registry of methods; `faying sources methods` prints it too.",
+    ]
+    stage = ""
+    titles = {
+        "loads": "Loads",
+        "joint": "The joint",
+        "hole": "The hole's edge",
+        "life": "Life",
+        "decision": "Decisions",
+    }
+    for m in methods():
+        if m.stage != stage:
+            stage = m.stage
+            lines += ["", f"## {titles[stage]}"]
+        proof = f"`faying evidence --subject '{m.evidence}'`" if m.evidence else "laws in the tests"
+        lines += [
+            "",
+            f"**{m.name}**",
+            "",
+            f"    {m.formula}",
+            "",
+            f"Range: {m.range}. Code: `{m.code}`. Held by: {proof}.",
+        ]
+        lines += ["", *(f"- {references()[key]}" for key in m.keys)]
+    return "\n".join(lines) + "\n"

@@ -7,6 +7,7 @@ from pathlib import Path
 
 import fatigue
 import reports
+from reports.provenance import theory_text
 
 SAMPLES = Path(__file__).parents[2] / "reports" / "samples"
 KEPT = ("critical_row.png", "report.html", "rows.csv")
@@ -33,6 +34,7 @@ def main() -> None:
         for name in KEPT:
             (SAMPLES / name).write_bytes((Path(temporary) / name).read_bytes())
             print(f"wrote {SAMPLES / name}")
+    (SAMPLES / "theory.md").write_text(theory_text(), encoding="utf-8")
 
 
 if __name__ == "__main__":

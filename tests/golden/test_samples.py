@@ -4,6 +4,7 @@ import numpy as np
 import pandas as pd
 import pytest
 
+from reports.provenance import theory_text
 from tests.golden.samples import SAMPLES, build, comparable
 
 ANEW = "run: python -m tests.golden.samples"
@@ -33,3 +34,7 @@ def test_report(built):
 
 def test_the_picture_of_the_readme_is_there():
     assert (SAMPLES / "critical_row.png").read_bytes().startswith(b"\x89PNG")
+
+
+def test_theory():
+    assert (SAMPLES / "theory.md").read_text(encoding="utf-8") == theory_text(), ANEW
