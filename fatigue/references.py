@@ -64,7 +64,4 @@ def references() -> dict[str, Reference]:
 def methods() -> tuple[Method, ...]:
     """Return the methods in the order an estimate uses them."""
     raw = tomllib.loads(HERE.joinpath("methods.toml").read_text(encoding="utf-8"))
-    return tuple(
-        Method(e["name"], e["stage"], e["code"], e["evidence"], e["formula"], tuple(e["keys"]), e["range"])
-        for e in raw["method"]
-    )
+    return tuple(Method(**{**entry, "keys": tuple(entry["keys"])}) for entry in raw["method"])

@@ -99,7 +99,7 @@ def theory_text() -> str:
     lines = [
         "# What faying computes",
         "",
-        "Written by `python -m tests.golden.samples` from the registry of methods; `faying sources methods` prints it too.",
+        "Written by `python -m tests.golden.samples` from the registry that `faying sources methods` prints.",
     ]
     stage = ""
     titles = {
