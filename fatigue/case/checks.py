@@ -12,6 +12,10 @@ from fatigue.case.reader import Tables
 from fatigue.material import library
 from spectra.faults import Fault, InputFaults, did_you_mean, listed
 
+MOST_HOLE = 0.8
+"""Largest hole over pitch that is taken at all; from 0.5 on a location is flagged."""
+RAREST = 1e-9
+"""Fewest cycles of a block in a flight."""
 ROLES = {"one-strap": ("main", "strap"), "two-strap": ("main", "strap"), "doubler": ("skin", "doubler")}
 
 
@@ -60,6 +64,12 @@ def _loads(loads: schema.LoadsTable | None, folder: Path) -> Iterator[Fault]:
                 f"loads.blocks[{position}]",
                 f"max_MPa and min_MPa are both {block.max_MPa:g}: that is no cycle.",
                 "Give two different stresses or leave the block out.",
+            )
+        if block.cycles < RAREST:
+            yield Fault(
+                f"loads.blocks[{position}].cycles",
+                f"{block.cycles:g} a flight is less than one in {1 / RAREST:g} flights.",
+                "Leave the block out.",
             )
     own = loads.spectrum is not None and loads.spectrum not in spectra.shipped()
     if loads.spectrum is not None and own and not (folder / loads.spectrum).is_file():
@@ -187,6 +197,13 @@ def _row(row: schema.RowTable, where: str, tables: Tables) -> Iterator[Fault]:
             f"{where}.hole_mm",
             f"{row.hole_mm:g} mm is not less than the pitch of {pitch:g} mm.",
             "Use a smaller hole or a larger pitch.",
+        )
+    elif pitch is not None and row.hole_mm > MOST_HOLE * pitch:
+        left = 100 * (1 - row.hole_mm / pitch)
+        yield Fault(
+            f"{where}.hole_mm",
+            f"{row.hole_mm:g} mm leaves {left:.0f} % of the pitch of {pitch:g} mm between holes.",
+            f"Nothing is solved here above a hole of {MOST_HOLE:g} of the pitch.",
         )
     for name, edge in (("row", row.edge_mm), ("splice", tables.splice.edge_mm if tables.splice else None)):
         if edge is not None and edge <= row.hole_mm / 2:

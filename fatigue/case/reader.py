@@ -83,11 +83,11 @@ def parse_tables(raw: dict[str, Any], faults: list[Fault]) -> Tables:
             shape = {"title": 'title = "..."'}.get(key, f"[{key}]")
             faults.append(Fault(key, "is missing.", f"Add {shape}; `faying new` writes a starter with all of them."))
     title = raw.get("title", "")
-    if isinstance(title, str) and (title.strip() or "title" not in raw):
+    if isinstance(title, str) and title.isprintable() and (title.strip() or "title" not in raw):
         tables.title = title
         tables.echo["title"] = title
     else:
-        faults.append(Fault("title", f'{show(title)} must be text, written "like this", and not empty.'))
+        faults.append(Fault("title", f'{show(title)} must be text on one line, written "like this", and not empty.'))
     for key, model in schema.SINGLE.items():
         if key in raw or key not in schema.REQUIRED:
             setattr(tables, key, _table(raw.get(key, {}), model, key, faults, tables.echo))

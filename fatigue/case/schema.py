@@ -10,8 +10,16 @@ from typing import Annotated, Literal
 from pydantic import BaseModel, ConfigDict, Field
 
 Length = Annotated[float, Field(gt=0, le=1e5)]
+Size = Annotated[float, Field(ge=0.01, le=1000)]
+"""Of a thickness or a hole; outside this a joint is not one of sheets and fasteners [mm]."""
+Modulus = Annotated[float, Field(ge=1e3, le=1e6)]
+"""From soft plastics to beyond every metal, so that a value in GPa is caught [MPa]."""
+Flexibility = Annotated[float, Field(ge=1e-10, le=1)]
+"""[mm/N]"""
 Fraction = Annotated[float, Field(ge=0, le=1)]
 Text = Annotated[str, Field(min_length=1, max_length=200)]
+Name = Annotated[str, Field(min_length=1, max_length=40, pattern=r"^\P{C}*$")]
+"""Of a row or sheet: short enough for a figure, without control characters."""
 
 
 class Table(BaseModel):
@@ -58,7 +66,7 @@ class SpliceTable(Table):
     to_centre_mm: Length | None = None
     edge_mm: Length | None = None
     flexibility: Literal["huth", "swift", "tate-rosenfeld"] = "huth"
-    flexibility_mm_per_N: Annotated[float, Field(gt=0, le=1)] | None = None
+    flexibility_mm_per_N: Flexibility | None = None
     bending: Literal["neutral-line", "none"] = "neutral-line"
     ends: Literal["pinned", "clamped"] = "pinned"
     concentration: Literal["row", "strip"] = "row"
@@ -68,15 +76,15 @@ class StepTable(Table):
     """A change of thickness in the bay after a row."""
 
     after_row: Text
-    thickness_mm: Length
+    thickness_mm: Size
 
 
 class SheetTable(Table):
     """`[[sheet]]`, in stacking order."""
 
-    name: Text
+    name: Name
     material: Text
-    thickness_mm: Length
+    thickness_mm: Size
     role: Literal["main", "strap", "skin", "doubler"] | None = None
     from_row: Text | None = None
     to_row: Text | None = None
@@ -94,15 +102,15 @@ class CountersinkTable(Table):
 class RowTable(Table):
     """`[[row]]`, in order along the load."""
 
-    name: Text
-    hole_mm: Length
+    name: Name
+    hole_mm: Size
     fastener: Text
     hole: Text
     at_mm: Annotated[float, Field(ge=0, le=1e6)] | None = None
     pitch_mm: Length | None = None
     edge_mm: Length | None = None
     countersink: CountersinkTable | None = None
-    flexibility_mm_per_N: Annotated[float, Field(gt=0, le=1)] | None = None
+    flexibility_mm_per_N: Flexibility | None = None
     head_fixity: Fraction = 1.0
     driven_head: Text | None = None
 
@@ -128,7 +136,7 @@ class HoleTable(Table):
 class MaterialTable(Table):
     """`[material.NAME]`: the user's own sheet material."""
 
-    modulus_MPa: Annotated[float, Field(gt=0, le=1e7)]
+    modulus_MPa: Modulus
     poisson: Annotated[float, Field(ge=0, lt=0.5)]
     yield_MPa: Annotated[float, Field(gt=0, le=1e5)]
     ultimate_MPa: Annotated[float, Field(gt=0, le=1e5)] | None = None
@@ -139,7 +147,7 @@ class FastenerTable(Table):
     """`[fastener.NAME]`: the user's own fastener."""
 
     kind: Literal["solid-rivet", "clearance-bolt", "close-fit-bolt", "interference-pin", "tapered-pin", "blind-rivet"]
-    modulus_MPa: Annotated[float, Field(gt=0, le=1e7)]
+    modulus_MPa: Modulus
     poisson: Annotated[float, Field(ge=0, lt=0.5)] = 0.33
 
 

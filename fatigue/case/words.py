@@ -103,7 +103,8 @@ def _fault(record: dict[str, Any], path: str, model: type[BaseModel]) -> Fault:
         "finite_number": "must be a finite number: NaN and infinity are not allowed.",
         "too_short": "must not be empty.",
         "string_too_short": "must not be empty.",
-        "string_too_long": "is too long.",
+        "string_too_long": f"is too long: {context.get('max_length')} characters are the most.",
+        "string_pattern_mismatch": "must be without control characters, on one line.",
     }
     return Fault(path, f"{given} {types.get(kind, record['msg'].lower() + '.')}")
 

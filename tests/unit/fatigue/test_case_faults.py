@@ -72,8 +72,12 @@ VALUES = [
         "splice.free_length_in: 1000000000.0 must be at most 3937.01 in.",
     ),
     ("max_MPa = 95.0", "max_ksi = 2e3", "loads.blocks[1].max_ksi: 2000.0 must be at most 1450.38 ksi."),
-    ('title = "three-row lap"', "title = 3", 'title: 3 must be text, written "like this", and not empty.'),
-    ('title = "three-row lap"', 'title = " "', "title: ' ' must be text, written \"like this\", and not empty."),
+    ('title = "three-row lap"', "title = 3", 'title: 3 must be text on one line, written "like this", and not empty.'),
+    (
+        'title = "three-row lap"',
+        'title = " "',
+        "title: ' ' must be text on one line, written \"like this\", and not empty.",
+    ),
     (ROW_A, 'name = ""', "row[1] \"\".name: '' must not be empty."),
     (ROW_A, "name = 1", 'row[1].name: 1 must be text, written "like this".'),
     (ROW_A, f"{ROW_A}\nhead_fixity = 2", 'row[1] "A".head_fixity: 2 must be at most 1.'),
@@ -85,7 +89,7 @@ VALUES = [
         "splice.kind: 'lpa' is not allowed: it is one of lap, one-strap, two-strap or doubler. Did ",
     ),
     (KIND, f'{KIND}\nflexibility = "hath"', "splice.flexibility: 'hath' is not allowed: it is one of huth, swift or"),
-    (KIND, f"{KIND}\nflexibility_mm_per_N = -1", "splice.flexibility_mm_per_N: -1 must be greater than 0 mm/N."),
+    (KIND, f"{KIND}\nflexibility_mm_per_N = -1", "splice.flexibility_mm_per_N: -1 must be at least 1e-10 mm/N."),
     ('"practice"', '"practise"', "life.credit: 'practise' is not allowed: it is one of none, practice or contact. Did"),
     (
         "[life]",
@@ -99,6 +103,11 @@ VALUES = [
     ("[life]", "[inspection]\ntests = 1.5\n[life]", "inspection.tests: 1.5 must be a whole number."),
     ("[life]", "[inspection]\nreliability = 95\n[life]", "inspection.reliability: 95 must be less than 1."),
     ("[life]", '[inspection]\nuse_credit = "yes"\n[life]', "inspection.use_credit: 'yes' must be true or false."),
+    ('title = "three-row lap"', 'title = "a\\nb"', "title: 'a\\nb' must be text on one line"),
+    (ROW_A, 'name = "\\u001b[31m"', "must be without control characters, on one line."),
+    (ROW_A, f'name = "{41 * "A"}"', "is too long: 40 characters are the most."),
+    ("hole_mm = 4.0", "hole_mm = 1e-6", 'row[1] "A".hole_mm: 1e-06 must be at least 0.01 mm.'),
+    ("[life]", OWN.replace("72000", "72"), "material.mine.modulus_MPa: 72 must be at least 1000 MPa."),
     ("[splice]", "[[splice]]", "must be a table. Write [splice] and its keys."),
 ]
 
@@ -151,6 +160,7 @@ NAMES = [
 ]
 
 GEOMETRY = [
+    (PITCH, "pitch_mm = 4.2", 'row[1] "A".hole_mm: 4 mm leaves 5 % of the pitch of 4.2 mm between holes. Nothing is'),
     (
         PITCH,
         "pitch_mm = 3.5",
@@ -218,6 +228,7 @@ LOADS = [
         "loads.blocks[1]: min_MPa 95 is above max_MPa 0. Swap them.",
     ),
     ("min_MPa = 0.0", "min_MPa = 95.0", "loads.blocks[1]: max_MPa and min_MPa are both 95: that is no cycle."),
+    ("cycles = 1", "cycles = 1e-12", "loads.blocks[1].cycles: 1e-12 a flight is less than one in 1e+09 flights. Leave"),
     ("cycles = 1", "cycles = 0", "loads.blocks[1].cycles: 0 must be greater than 0."),
     ("flown_flights = 10000", "scale = 0", "loads.scale: 0 must be greater than 0."),
     (
