@@ -9,7 +9,7 @@ import lzma
 import re
 import warnings
 import zlib
-from collections.abc import Iterator, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from contextlib import contextmanager
 from dataclasses import dataclass
 from pathlib import Path
@@ -26,7 +26,7 @@ LINES_SEEN = 60
 """Lines looked at to find out how a file is written."""
 ROWS = 1 << 18
 """Rows read at a time."""
-OPENERS = {".gz": gzip.open, ".bz2": bz2.open, ".xz": lzma.open}
+OPENERS: dict[str, Any] = {".gz": gzip.open, ".bz2": bz2.open, ".xz": lzma.open}
 DECIMAL_COMMA = re.compile(r"[+-]?\d*,\d+(e[+-]?\d+)?", re.IGNORECASE)
 
 
@@ -62,18 +62,21 @@ class CsvFile:
         """Name the place of a row of values, counted from 0."""
         return f"line {self.first_line + row}"
 
-    def blocks(self, columns: Sequence[str]) -> Iterator[dict[str, NDArray[Any]]]:
-        """Yield the columns block by block: numbers, or text where there is some.
+    def blocks(
+        self, columns: Sequence[str], on_progress: Callable[[int, int], None] | None = None
+    ) -> Iterator[dict[str, NDArray[Any]]]:
+        """Yield the columns block by block: numbers, or text where there is some; report bytes read and in all.
 
         Raises
         ------
         InputFaults
             If the file cannot be read on.
         """
-        with _taught(self.path), warnings.catch_warnings():
+        size = self.path.stat().st_size
+        with _taught(self.path), self.path.open("rb") as raw, warnings.catch_warnings():
             warnings.simplefilter("error", pd.errors.ParserWarning)
             reader = pd.read_csv(
-                self.path,
+                OPENERS[self.path.suffix.lower()](raw) if self.path.suffix.lower() in OPENERS else raw,
                 encoding="utf-8-sig",
                 sep=self.delimiter,
                 decimal=self.decimal,
@@ -88,6 +91,8 @@ class CsvFile:
             )
             for frame in reader:
                 yield {name: frame[name].to_numpy() for name in columns}
+                if on_progress:
+                    on_progress(raw.tell(), size)
 
 
 def open_csv(path: Path, wanted: Sequence[str]) -> CsvFile:
@@ -152,8 +157,7 @@ def _numbers(cells: Sequence[str], decimal: str) -> bool:
 
 
 def _open(path: Path) -> TextIO:
-    opener: Any = OPENERS.get(path.suffix.lower(), open)
-    file: TextIO = opener(path, "rt", encoding="utf-8-sig", newline="")
+    file: TextIO = OPENERS.get(path.suffix.lower(), open)(path, "rt", encoding="utf-8-sig", newline="")
     return file
 
 

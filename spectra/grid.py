@@ -82,12 +82,8 @@ class Gridded:
     grid: Grid
 
     def effect(self, power: float = POWER) -> float:
-        """Return the most that the grid changes the sum of n (range max)^(power/2), as a share of it.
-
-        Smith, Watson and Topper's parameter (key ``smith-watson-topper-1970``) in a power law; a maximum below
-        zero does no damage.
-        """
-        least, given, most = (_damage(table, power) for table in (self.narrowest, self.cycles, self.widest))
+        """Return the most that the grid changes `power_damage`, as a share of it."""
+        least, given, most = (power_damage(table, power) for table in (self.narrowest, self.cycles, self.widest))
         return max(most / given - 1.0, 1.0 - least / given) if given > 0 else 0.0
 
     def note(self, power: float = POWER) -> str:
@@ -180,5 +176,10 @@ def _pairs(size: Array, mean: Array, number: Array) -> Cycles:
     return owned(mean - size / 2, mean + size / 2, number.copy())
 
 
-def _damage(cycles: Cycles, power: float) -> float:
+def power_damage(cycles: Cycles, power: float = POWER) -> float:
+    """Return the sum of n (range max)^(power/2), a maximum below zero doing none.
+
+    Smith, Watson and Topper's parameter (key ``smith-watson-topper-1970``) in a power law: for comparisons where no
+    hole is known.
+    """
     return float(np.sum(cycles.count * (cycles.range * np.maximum(cycles.high, 0.0)) ** (power / 2)))

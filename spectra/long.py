@@ -13,7 +13,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from spectra.counting import Part, count_part, finish, join_parts
+from spectra.counting import Part, count, count_part, finish, join_parts
 from spectra.cycles import Cycles, joined
 from spectra.grid import BOUND, POWER
 from spectra.tally import Tally
@@ -23,6 +23,8 @@ Progress = Callable[[int, int], None]
 
 BLOCK = 1 << 20
 """Values a thread counts at a time."""
+SHORT = 1 << 21
+"""Histories up to so many values are counted whole, all pairs kept."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -51,12 +53,13 @@ def count_long(
     power: float = POWER,
     threads: int | None = None,
     block: int = BLOCK,
+    short: int = SHORT,
     on_progress: Progress | None = None,
 ) -> LongCount:
     """Count a history of any length in bounded memory.
 
-    The same cycles as `count`; where their extremes take more than a few thousand values, those that close early are
-    kept in a range-mean grid, and those of the residue, the largest among them, as they are.
+    The same cycles as `count`; where a history is not short and the extremes take more than a few thousand values,
+    those that close early are kept in a range-mean grid, and those of the residue, the largest among them, as they are.
 
     Parameters
     ----------
@@ -70,6 +73,8 @@ def count_long(
         As many as there are cores.
     block : int
         Values a thread counts at a time.
+    short : int
+        Histories up to so many values are counted whole, all pairs kept.
     on_progress : callable, optional
         Called with values done and in all, both passes counted.
 
@@ -89,6 +94,8 @@ def count_long(
     >>> count_long(np.array([0.0, 5.0, 1.0, 5.0, 0.0])).cycles.range
     array([5., 4.])
     """
+    if values.size <= short:
+        return LongCount(count(values, close).merged(), (), 0.0)
     tell = on_progress or (lambda done, total: None)
     total = 2 * values.size
     done = 0

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
@@ -12,6 +12,8 @@ from numpy.typing import NDArray
 
 from spectra.faults import Fault, InputFaults, show
 from spectra.store import blocks
+
+Progress = Callable[[int, int], None]
 
 ROWS = 1 << 18
 
@@ -32,10 +34,12 @@ class NumpyFile:
         """Return a column, mapped."""
         return self.data[name] if self.data.dtype.names else self.data
 
-    def blocks(self, columns: Sequence[str]) -> Iterator[dict[str, NDArray[Any]]]:
-        """Yield the columns block by block."""
-        for _, part in blocks(self.data):
+    def blocks(self, columns: Sequence[str], on_progress: Progress | None = None) -> Iterator[dict[str, NDArray[Any]]]:
+        """Yield the columns block by block; report rows read and in all."""
+        for start, part in blocks(self.data):
             yield {name: part[name] if part.dtype.names else part for name in columns}
+            if on_progress:
+                on_progress(start + part.size, self.data.size)
 
 
 def open_numpy(path: Path, wanted: Sequence[str]) -> NumpyFile:
@@ -79,17 +83,21 @@ class ParquetFile:
         """Name the place of a row, counted from 0."""
         return f"row {row + 1:,}"
 
-    def blocks(self, columns: Sequence[str]) -> Iterator[dict[str, NDArray[Any]]]:
-        """Yield the columns block by block.
+    def blocks(self, columns: Sequence[str], on_progress: Progress | None = None) -> Iterator[dict[str, NDArray[Any]]]:
+        """Yield the columns block by block; report rows read and in all.
 
         Raises
         ------
         InputFaults
             If the file cannot be read on.
         """
+        done = 0
         try:
             for batch in self.file.iter_batches(batch_size=ROWS, columns=list(columns)):
                 yield {name: batch.column(name).to_numpy(zero_copy_only=False) for name in columns}
+                done += batch.num_rows
+                if on_progress:
+                    on_progress(done, self.file.metadata.num_rows)
         except (OSError, ValueError) as error:
             raise _no_parquet(self.path, error) from None
 

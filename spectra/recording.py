@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Collection, Mapping, Sequence
+from collections.abc import Callable, Collection, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from pathlib import Path
 from typing import Any
@@ -117,7 +117,11 @@ class Recording:
 
 
 def read_recording(
-    path: str | Path, column: str, channels: Mapping[str, float] | None = None, time: str | None = None
+    path: str | Path,
+    column: str,
+    channels: Mapping[str, float] | None = None,
+    time: str | None = None,
+    on_progress: Callable[[int, int], None] | None = None,
 ) -> Recording:
     """Read a recorded history from a CSV, Parquet or NumPy file.
 
@@ -131,6 +135,8 @@ def read_recording(
         Columns whose sum the history is, each with its factor: stress per unit of the column.
     time : str, optional
         Column of times: seconds, or dates with times of day.
+    on_progress : callable, optional
+        Called with what is read and what there is, in bytes or rows.
 
     Returns
     -------
@@ -161,7 +167,7 @@ def read_recording(
     faults += _mixed_units(file, [column] if not channels else [*channels])
     if faults:
         raise InputFaults(str(path), faults)
-    recording = _read(file, column, channels, time)
+    recording = _read(file, column, channels, time, on_progress)
     if not recording.values.size:
         raise InputFaults(str(path), [Fault(column, "the column has no values.", "Give at least two.")])
     return recording
@@ -189,13 +195,19 @@ def _mixed_units(file: File, columns: Sequence[str]) -> list[Fault]:
     return faults
 
 
-def _read(file: File, column: str, channels: Mapping[str, float] | None, time: str | None) -> Recording:
+def _read(
+    file: File,
+    column: str,
+    channels: Mapping[str, float] | None,
+    time: str | None,
+    on_progress: Callable[[int, int], None] | None,
+) -> Recording:
     if isinstance(file, NumpyFile) and not channels and not time:
         return Recording(file, column, file.column(column))
     factors = dict(channels or {column: 1.0})
     values, times = Store(), Store()
     seen: dict[int, str] = {}
-    for block in file.blocks([*factors, *([time] if time else [])]):
+    for block in file.blocks([*factors, *([time] if time else [])], on_progress):
         total: Array | float = 0.0
         for name, factor in factors.items():
             x = numbers(block[name])

@@ -116,7 +116,7 @@ def test_chunk_size_changes_nothing(size, x):
 def test_blocks_and_threads_change_nothing(x, block, threads):
     assume(np.unique(x).size < 300)
     for close in (True, False):
-        counted = long.count_long(x, close, block=block, threads=threads)
+        counted = long.count_long(x, close, short=0, block=block, threads=threads)
         assert counted.effect == 0.0
         assert table(counted.cycles) == table(spectra.count(x, close))
 
@@ -201,7 +201,12 @@ class TestPitfallsOfThePackage:
 
     @pytest.mark.parametrize("bad", [np.nan, np.inf, -np.inf])
     def test_what_is_not_finite_is_refused(self, bad):
-        for count in (spectra.count, count_part, spectra.turning_points, lambda x: long.count_long(np.array(x))):
+        for count in (
+            spectra.count,
+            count_part,
+            spectra.turning_points,
+            lambda x: long.count_long(np.array(x), short=0),
+        ):
             with pytest.raises(ValueError, match="finite"):
                 count([0.0, 1.0, bad, 1.0])
 
@@ -209,7 +214,7 @@ class TestPitfallsOfThePackage:
     @pytest.mark.parametrize("close", [True, False])
     def test_a_constant_has_no_cycle(self, x, close):
         assert len(spectra.count(x, close)) == 0
-        assert len(long.count_long(np.array(x), close).cycles) == 0
+        assert len(long.count_long(np.array(x), close, short=0).cycles) == 0
 
     @example(1e-320)
     @given(st.floats(1e-323, 1e-300))
