@@ -38,7 +38,7 @@ NUMBERS = st.one_of(
             "12.7",
             "3.9999999999",
         ]
-    ),  # fmt: skip
+    ),
     st.floats(1e-3, 1e3).map(repr),
     st.floats(0.1, 40).map(lambda v: f"{v:.3g}"),
 )
@@ -51,7 +51,8 @@ WORDS = st.sampled_from(
 )  # fmt: skip
 KEYS = st.sampled_from(
     [
-        "slack_mm = 0.05", "friction_share = 0.3", "head_fixity = 0.2", "at_mm = 10.0", "pitch_mm = 30.0", "edge_mm = 3.0",
+        "slack_mm = 0.05", "friction_share = 0.3", "head_fixity = 0.2", "at_mm = 10.0", "pitch_mm = 30.0",
+        "edge_mm = 3.0",
         "flexibility_mm_per_N = 1e-5", "to_centre_mm = 5.0", 'role = "main"', 'from_row = "B"', 'to_row = "A"',
         "steps = [ { after_row = 'B', thickness_mm = 0.5 } ]", "scale = 3.0", "cold_expansion_percent = 4.0",
         "squeeze_ratio = 1.6", "fit_percent = -1.0", "friction = 0.3", "unknown = 1", "use_credit = true", "tests = 3",

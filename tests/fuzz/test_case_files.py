@@ -29,10 +29,11 @@ DEAR = settings(max_examples=max(EXAMPLES // 10, 50), deadline=None, suppress_he
 def read(text):
     try:
         return fatigue.parse_case(text, "spoilt.toml", Path(__file__).parent)
-    except InputFaults as faults:
-        assert str(faults).startswith("spoilt.toml")
-        assert all(fault.problem for fault in faults.faults)
-        return None
+    except InputFaults as error:
+        faults = error
+    assert str(faults).startswith("spoilt.toml")
+    assert all(fault.problem for fault in faults.faults)
+    return None
 
 
 @CHEAP
