@@ -22,6 +22,8 @@ def fit_story(estimate: Estimate, curves: FitCurves) -> list[str]:
     i = estimate.governing
     r, s = estimate.case.splice.locations[i]
     fit, life = curves.fit_percent, curves.life[:, i]
+    if not np.isfinite(life).all():
+        return ["The loads do no damage there at one fit or more: there is nothing to compare."]
     name = f"row {estimate.case.splice.rows[r].name}, {estimate.case.splice.sheets[s].name}"
     return [
         *_clearance(name, fit, life),

@@ -50,7 +50,8 @@ def draw_life_against_fit(ax: Axes, estimate: Estimate, curves: FitCurves) -> Ax
     ax.axvline(0.0, color=FAINT, lw=1.0, zorder=0)
     ax.text(0.0, 0.99, " snug", transform=ax.get_xaxis_transform(), va="top", fontsize=8, color=SOFT)
     ax.set_yscale("log")
-    ax.set_ylim(curves.life.min() / 2, min(CAP, curves.life.max()) * 1.5)
+    # lives without damage are infinite, and lie above the picture
+    ax.set_ylim(min(CAP, curves.life.min()) / 2, min(CAP, curves.life.max()) * 1.5)
     ax.set_xlim(curves.fit_percent[0], curves.fit_percent[-1])
     ax.set_xlabel("fit: diametral interference [% of the hole]; clearance is negative")
     ax.set_ylabel("life [flights]")
