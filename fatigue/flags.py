@@ -47,10 +47,23 @@ def geometry_flags(splice: Splice, joint: Joint, local: LocalStress) -> list[lis
             if shank < SMALLEST_SHANK:
                 own.append(f"countersink factor extrapolated below b/t {SMALLEST_SHANK:g}")
         ends_here = (sheet.end == "free" and r == sheet.last_row) or (sheet.start == "free" and r == sheet.first_row)
+        if splice.staggered and _nearest_row(splice, r) < row.pitch:
+            own.append("staggered rows nearer than their pitch: holes on the diagonal not modelled")
+        if row.friction_share > 0.0:
+            own.append(f"{100 * row.friction_share:g} % of the row's load by friction, as stated in the case")
+        if row.slack > 0.0:
+            closed = [joint.closing_stress[k] for k, (at, *_) in enumerate(joint.interfaces) if at == r]
+            own.append(f"slack {row.slack:g} mm: the row takes load from {min(closed):.0f} MPa remote stress on")
         if ends_here and sheet.edge < USUAL_EDGE * row.hole_diameter:
             own.append(f"edge distance {sheet.edge / row.hole_diameter:.1f} d is under {USUAL_EDGE:g} d")
         flags.append(own)
     return flags
+
+
+def _nearest_row(splice: Splice, row: int) -> float:
+    """Return the distance to the nearest other row, infinite where there is none [mm]."""
+    here = splice.rows[row].position
+    return min((abs(other.position - here) for k, other in enumerate(splice.rows) if k != row), default=float("inf"))
 
 
 def stress_flags(splice: Splice, joint: Joint, local: LocalStress) -> list[list[str]]:
@@ -128,6 +141,6 @@ def curve_flags(
         if recounted[i]:
             own.append("map not monotone: local history counted anew")
         if folded[i]:
-            own.append("map not monotone, no history to count anew: cycles mapped by their ends")
+            own.append("map not monotone, no history to count anew: each cycle by the local stresses it spans")
         flags.append(own)
     return flags

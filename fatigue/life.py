@@ -17,6 +17,7 @@ import spectra
 from fatigue.case.build import Case
 from fatigue.damage import damage_per_cycle, life_in_flights
 from fatigue.filled import FilledHoles, Governing, filled_holes, governing_point, mapped
+from fatigue.folds import SEEN, by_way_of, spanned, turning_levels
 from fatigue.inspection import ThresholdFactor, threshold_factor
 from fatigue.joint import Joint, solve_joint
 from fatigue.loads import CountedLoads, count_loads
@@ -40,7 +41,7 @@ class RouteResult:
     peak : ndarray, shape (L, m)
         Hoop stress at the load levels, at the point of the edge that governs [MPa].
     low, high : ndarray, shape (L, n)
-        Local stress at the ends of each counted cycle [MPa].
+        Least and largest local stress in each counted cycle [MPa].
     by_cycle : ndarray, shape (L, n)
         Damage per flight of each counted cycle.
     damage : ndarray, shape (L,)
@@ -147,7 +148,8 @@ def estimate(
     report = on_progress or (lambda done, total: None)
     loads = loads or count_loads(case)
     report(1, 4)
-    joint = solve_joint(case.splice)
+    largest = float(loads.cycles.high.max(initial=0.0))
+    joint = solve_joint(case.splice, largest if largest > 0.0 else None)
     local = local_stress(case.splice, joint, load_levels(loads.cycles))
     report(2, 4)
     curves = location_curves(case, local, loads.cycles)
@@ -177,11 +179,14 @@ def load_levels(cycles: Cycles) -> Array:
 def location_curves(case: Case, local: LocalStress, cycles: Cycles) -> LocationCurves:
     """Return the S-N curve of every location: its severity K0 on its own sheet's family.
 
-    K0 is the untreated local range over the net-section stress range in the spectrum's largest cycle; it depends on
-    nothing else, so that one curve serves every cycle and route.
+    K0 is the untreated local range over the net-section stress range in the spectrum's largest cycle, its part in
+    tension; it depends on nothing else, so that one curve serves every cycle and route.
     """
     largest = int(np.argmax(cycles.range)) if len(cycles) else None
     low, high = (cycles.low[largest], cycles.high[largest]) if largest is not None else (0.0, 1.0)
+    if high > 0.0 > low:
+        # in compression the pin pushes on, which says nothing of how sharp the notch is
+        low = 0.0
     if high == low:
         low, high = 0.0, 1.0
     if local.levels.size < 2:
@@ -217,14 +222,19 @@ def route_result(
     cycles = loads.cycles
     first, second = (mapped(peak, levels, end) for end in (cycles.low, cycles.high))
     low, high = np.minimum(first, second), np.maximum(first, second)
+    # rounding may dent a flat map: only a fall that could be seen in a stress counts
+    bent = (np.diff(peak, axis=1) < -SEEN * np.abs(peak).max(axis=1, initial=0.0)[:, None]).any(axis=1)
+    turns = {int(i): turning_levels(peak[i], levels) for i in np.flatnonzero(bent)}
+    for place, own_turns in turns.items():
+        low[place], high[place] = spanned(peak[place], levels, own_turns, cycles.low, cycles.high)
     by_cycle = damage_per_cycle(curves.life(low, high), cycles.count)
     damage = by_cycle.sum(axis=1)
-    # rounding may dent a flat map: only a fall that could be seen in a stress counts
-    bent = (np.diff(peak, axis=1) < -1e-9 * np.abs(peak).max(axis=1, initial=0.0)[:, None]).any(axis=1)
     recounted = bent & (loads.history is not None)
     for i in np.flatnonzero(recounted):
         assert loads.history is not None
-        local = spectra.count(np.interp(loads.history.values, levels, peak[i]), repeating)
+        # the history passes every stress between its turning points, those where the map turns too
+        path = by_way_of(loads.history.values, levels[turns[int(i)]], repeating)
+        local = spectra.count(np.interp(path, levels, peak[i]), repeating)
         own = local.per_flight(loads.history.flights).merged()
         life = curves.only(int(i)).life(own.low[None], own.high[None])
         damage[i] = damage_per_cycle(life, own.count).sum()

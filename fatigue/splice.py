@@ -188,6 +188,9 @@ class Splice:
         ``pinned`` or ``clamped``: the ends of the free length.
     edge : str
         ``row``: the holes of a row shield each other; ``strip``: each strip stands alone.
+    staggered : bool
+        Whether the holes of each row stand between those of the next rather than in line with them. Rows are taken one
+        by one either way; it only says what that leaves out.
     """
 
     kind: SpliceKind
@@ -200,6 +203,7 @@ class Splice:
     bending: str = "neutral-line"
     ends: str = "pinned"
     edge: str = "row"
+    staggered: bool = False
 
     @property
     def first_loaded(self) -> int:

@@ -16,6 +16,7 @@ COMMANDS = {
     "hole": "Solve one hole: peak stress, range factor and contact.",
     "new": "Write a commented starter case.",
     "count": "Count a recorded history's rainflow cycles.",
+    "spectrum": "Show a shipped or own spectrum: its flights, phases and cycles.",
     "evidence": "Compute every published check now, beside the printed value.",
     "sources": "Print materials, fasteners, curves, spectra and methods with where they come from.",
 }

@@ -162,6 +162,8 @@ def _splice(tables: Tables, table: schema.SpliceTable) -> Splice:
             countersink=Countersink(sheet_names.index(sink.sheet), sink.depth_mm) if sink else None,
             flexibility=row.flexibility_mm_per_N or table.flexibility_mm_per_N,
             head_fixity=row.head_fixity,
+            slack=row.slack_mm,
+            friction_share=row.friction_share,
             driven_sheet=sheet_names.index(row.driven_head) if row.driven_head else None,
         )
 
@@ -176,6 +178,7 @@ def _splice(tables: Tables, table: schema.SpliceTable) -> Splice:
         bending=table.bending,
         ends=table.ends,
         edge=table.concentration,
+        staggered=table.staggered,
     )
 
 

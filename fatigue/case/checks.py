@@ -213,6 +213,14 @@ def _row(row: schema.RowTable, where: str, tables: Tables) -> Iterator[Fault]:
                 "The distance from the hole's centre to the free end must exceed its radius.",
             )
     yield from _known(row.fastener, [*tables.fasteners, *library.fasteners()], f"{where}.fastener", "fastener")
+    own = tables.fasteners.get(row.fastener)
+    kind = own.kind if own else library.fastener(row.fastener).kind if row.fastener in library.fasteners() else ""
+    if row.friction_share > 0.0 and kind in ("solid-rivet", "blind-rivet"):
+        yield Fault(
+            f"{where}.friction_share",
+            f"{row.friction_share:g} given for a {kind}, which clamps too little and too unsurely to carry load so.",
+            "Leave it out, or name a bolt or pin.",
+        )
     yield from _known(row.hole, list(tables.holes), f"{where}.hole", "hole table")
     if row.driven_head is not None:
         names = [sheet.name for sheet in tables.sheets if sheet is not None]

@@ -70,6 +70,7 @@ class SpliceTable(Table):
     bending: Literal["neutral-line", "none"] = "neutral-line"
     ends: Literal["pinned", "clamped"] = "pinned"
     concentration: Literal["row", "strip"] = "row"
+    staggered: bool = False
 
 
 class StepTable(Table):
@@ -112,6 +113,8 @@ class RowTable(Table):
     countersink: CountersinkTable | None = None
     flexibility_mm_per_N: Flexibility | None = None
     head_fixity: Fraction = 1.0
+    slack_mm: Annotated[float, Field(ge=0, le=10)] = 0.0
+    friction_share: Annotated[float, Field(ge=0, lt=1)] = 0.0
     driven_head: Text | None = None
 
 

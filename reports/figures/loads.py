@@ -4,23 +4,26 @@ from __future__ import annotations
 
 import numpy as np
 from matplotlib.axes import Axes
+from matplotlib.ticker import NullFormatter
 
 from fatigue.life import Estimate
 from reports.figures.style import INK, PARTS, SOFT
 from spectra import Cycles
 
 
-def draw_exceedances(ax: Axes, cycles: Cycles) -> Axes:
+def draw_exceedances(ax: Axes, cycles: Cycles, unit: str = "MPa") -> Axes:
     """Draw how often a flight crosses each remote stress upward.
 
     Parameters
     ----------
     ax : Axes
     cycles : Cycles
-        Per flight [MPa].
+        Per flight.
+    unit : str
+        Of the cycles.
     """
     ax.set_xlabel("upward crossings per flight")
-    ax.set_ylabel("remote gross stress [MPa]")
+    ax.set_ylabel(f"remote gross stress [{unit}]")
     if not len(cycles):
         ax.text(0.5, 0.5, "no cycles", transform=ax.transAxes, ha="center", color=SOFT)
         return ax
@@ -30,6 +33,9 @@ def draw_exceedances(ax: Axes, cycles: Cycles) -> Axes:
     seen = crossings > 0
     ax.step(crossings[seen], levels[seen], where="post", color=INK, lw=1.4)
     ax.set_xscale("log")
+    # a decade at least, so that one of its ends is a labelled tick
+    ax.set_xlim(min(crossings[seen].min() / 1.5, 0.2), max(1.5 * crossings.max(), 2.0))
+    ax.xaxis.set_minor_formatter(NullFormatter())
     ax.grid(visible=True)
     return ax
 

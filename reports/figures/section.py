@@ -14,6 +14,7 @@ from fatigue.life import Estimate
 from fatigue.splice import Splice
 from reports.figures.style import DAMAGE, INK, MARK, METAL, PAPER, SOFT, life_text
 
+GHOST = "#b9c0c8"
 SHADES = 1e-4
 """Damage over the worst location's below which a location is drawn in the lightest shade."""
 
@@ -33,6 +34,8 @@ def draw_section(ax: Axes, estimate: Estimate) -> Axes:
     """
     splice, joint = estimate.case.splice, estimate.joint
     left, right = _reach(splice)
+    if splice.to_centre > 0.0:
+        _other_half(ax, splice, joint, left, right)
     _sheets(ax, splice, joint, left, right)
     _damage(ax, estimate)
     _load_path(ax, splice, joint, left, right)
@@ -43,11 +46,10 @@ def draw_section(ax: Axes, estimate: Estimate) -> Axes:
     top, bottom = _top(joint), _bottom(joint)
     tall = 1.1 * max(row.hole_diameter for row in splice.rows)
     if splice.to_centre > 0.0:
-        x = splice.rows[-1].position + splice.to_centre
-        ax.plot([x, x], [bottom - tall, top + tall], color=SOFT, lw=0.9, ls=(0, (12, 3, 2, 3)))
-        ax.text(x, top + tall, " line of\n symmetry", fontsize=7.5, color=SOFT, va="top", ha="left")
+        ax.plot([right, right], [bottom - tall, top + tall], color=SOFT, lw=0.9, ls=(0, (12, 3, 2, 3)))
+        ax.text(right, bottom - 1.05 * tall, "line of symmetry", fontsize=7.5, color=SOFT, va="top", ha="center")
     arrow = _arrow_reach(splice, left)
-    ax.set_xlim(left - arrow - 2.0, right + (arrow + 2.0 if splice.to_centre <= 0.0 else 4.0))
+    ax.set_xlim(left - arrow - 2.0, right + (arrow + 2.0 if splice.to_centre <= 0.0 else _ghost(splice)))
     ax.set_ylim(bottom - 2.3 * tall / 1.1, top + 4.1 * tall / 1.1)
     ax.set_aspect("equal")
     ax.set_axis_off()
@@ -60,6 +62,30 @@ def _reach(splice: Splice) -> tuple[float, float]:
     stub = max(4.5 * max(row.hole_diameter for row in splice.rows), 0.28 * span)
     right = splice.to_centre if splice.to_centre > 0.0 else stub
     return -stub, span + right
+
+
+def _ghost(splice: Splice) -> float:
+    """Return how much of the other half is drawn beyond a line of symmetry."""
+    span = splice.rows[-1].position + splice.to_centre
+    return splice.to_centre + max(0.45 * span, 2.5 * splice.rows[-1].hole_diameter)
+
+
+def _other_half(ax: Axes, splice: Splice, joint: Joint, left: float, right: float) -> None:
+    """Draw the other half of a symmetric joint, faint: sheets and the rows within reach."""
+    window = Rectangle((right, -1e3), _ghost(splice), 2e3, transform=ax.transData)
+    style: dict[str, Any] = {"facecolor": PAPER, "edgecolor": GHOST, "lw": 0.8}
+    for s in range(len(splice.sheets)):
+        corners = sheet_outline(splice, joint, s, left, right)
+        ghost = Polygon(np.column_stack([2 * right - corners[:, 0], corners[:, 1]]), zorder=0.5, **style)
+        ax.add_patch(ghost)
+        ghost.set_clip_path(window)
+    for r, row in enumerate(splice.rows):
+        x = 2 * right - row.position
+        if x + row.hole_diameter < right + _ghost(splice):
+            heights = [_at_hole(joint, i) for i, place in enumerate(splice.locations) if place[0] == r]
+            low, high = min(m - t / 2 for m, t in heights), max(m + t / 2 for m, t in heights)
+            d = row.hole_diameter
+            ax.add_patch(Rectangle((x - d / 2, low), d, high - low, zorder=0.6, **style))
 
 
 def _top(joint: Joint) -> float:
@@ -190,7 +216,7 @@ def _head(ax: Axes, x: float, y: float, up: float, d: float, riveted: bool, styl
 def _load_path(ax: Axes, splice: Splice, joint: Joint, left: float, right: float) -> None:
     """Draw each bay's share of the load as a line as thick as the share, and write it where there is room."""
     edges = _segment_edges(splice, left, right)
-    after = _shares(splice, joint)
+    after = joint.segment_load
     for s in range(len(splice.sheets)):
         for i in range(edges.size - 1):
             share = after[i, s]
@@ -232,28 +258,19 @@ def _arrow(ax: Axes, start: float, end: float, y: float) -> None:
         ax.text((start + end) / 2, y + 0.5, "S", fontsize=10, style="italic", ha="center", va="bottom")
 
 
-def _shares(splice: Splice, joint: Joint) -> np.ndarray:
-    """Return the share of the remote load in every segment of every sheet, shape (segments, sheets)."""
-    shares = np.zeros((len(splice.rows) + 1, len(splice.sheets)))
-    shares[0, splice.first_loaded] = 1.0
-    for (r, s), incoming, bypass in zip(splice.locations, joint.incoming, joint.bypass, strict=True):
-        pair = (incoming, bypass)
-        # whichever of the two is not what came in goes on
-        before = shares[r, s]
-        shares[r + 1, s] = pair[1] if abs(pair[0] - before) <= abs(pair[1] - before) else pair[0]
-    return shares
-
-
 def _names(ax: Axes, splice: Splice, joint: Joint, left: float, right: float) -> None:
     top, bottom = _top(joint), _bottom(joint)
     for row in splice.rows:
         ax.text(row.position, top + 1.05 * row.hole_diameter, f"row {row.name}", fontsize=9, weight="bold", ha="center")
     for s, sheet in enumerate(splice.sheets):
-        text = f"{sheet.name}, {sheet.thickness:g} mm"
+        thicknesses = dict.fromkeys([sheet.thickness, *(step.thickness for step in sheet.steps)])
+        text = f"{sheet.name}, {' to '.join(f'{t:g}' for t in thicknesses)} mm"
         outline = sheet_outline(splice, joint, s, left, right)
         above = s < len(splice.sheets) / 2
         x = left if sheet.start == "loaded" else right
         side = "left" if sheet.start == "loaded" else "right"
+        if splice.to_centre > 0.0 and sheet.start != "loaded":
+            x, side = right + 1.0, "left"
         y = outline[:, 1].max() + 0.5 if above else outline[:, 1].min() - 0.5
         ax.text(x, y, text, fontsize=8, color=SOFT, ha=side, va="bottom" if above else "top")
     span = [splice.rows[0].position, splice.rows[-1].position]
@@ -288,18 +305,26 @@ def _critical(ax: Axes, estimate: Estimate, right: float) -> None:
     y = middle + {"upper": 0.5, "lower": -0.5, "": 0.0}[face] * thickness
     for side in (-0.5, 0.5):
         ax.plot(row.position + side * row.hole_diameter, y, "o", ms=9, mfc="none", mec=MARK, mew=1.8, zorder=8)
-    words = f"{face} face, {'faying: hidden' if joint.hidden[i] else 'visible'}" if face else "either face"
+    words = f"{face} face ({'faying, hidden' if joint.hidden[i] else 'visible'})" if face else "either face"
     life = float(estimate.route.life[i])
     text = f"first: row {row.name}, {sheet.name}\n{words}: {life_text(life)} flights"
     top = _top(joint)
+    towards = 1.0 if 2 * row.position <= splice.rows[-1].position or r == 0 else -1.0
     ax.annotate(
         text,
-        xy=(row.position + 0.55 * row.hole_diameter, y),
-        xytext=(row.position + 1.2 * row.hole_diameter, top + 1.9 * row.hole_diameter),
+        xy=(row.position + towards * 0.55 * row.hole_diameter, y),
+        xytext=(row.position + towards * 1.6 * row.hole_diameter, top + 1.9 * row.hole_diameter),
         fontsize=9,
         color=MARK,
         weight="bold",
+        ha="left" if towards > 0 else "right",
         va="bottom",
-        arrowprops={"arrowstyle": "-", "color": MARK, "lw": 1.1, "shrinkB": 4},
+        arrowprops={
+            "arrowstyle": "-",
+            "color": MARK,
+            "lw": 1.1,
+            "shrinkB": 4,
+            "relpos": (0.03 if towards > 0 else 0.97, 0.0),
+        },
         zorder=9,
     )
