@@ -14,7 +14,7 @@ from reports.figures.sheets import case_figures
 from reports.figures.style import save, svg_text
 from reports.page import report_html
 from reports.tables import csv_text, cycles_frame, in_unit, result_json
-from spectra.faults import Fault, InputFaults
+from spectra.faults import Fault, InputFaults, listed
 
 
 def write(
@@ -77,8 +77,12 @@ def write_files(folder: Path, fill: Callable[[Path], None]) -> list[Path]:
         folder.mkdir(parents=True, exist_ok=True)
         place = Path(tempfile.mkdtemp(prefix=".faying-", dir=folder))
         fill(place)
+        made_files = sorted(place.iterdir())
+        # found before anything is replaced, so that no file is new beside one that is old
+        if blocked := [made.name for made in made_files if (folder / made.name).is_dir()]:
+            raise IsADirectoryError(0, f"{listed(blocked, 'and')}: a folder of that name is in the way")
         written = []
-        for made in sorted(place.iterdir()):
+        for made in made_files:
             target = folder / made.name
             os.replace(made, target)
             written.append(target)
