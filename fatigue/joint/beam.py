@@ -17,7 +17,7 @@ NEGLIGIBLE = 1e-9
 """Bending below this share of the remote stress is rounding, and belongs to no face."""
 USUAL_STRAIN = 1 / 720
 """Remote strain at which faces are found unless a stress is given: 100 MPa in aluminium of 72 000 MPa."""
-BLOCK = 128
+BLOCK = 256
 """Variants taken at a time, so that the numbers of a block stay in the processor's cache."""
 
 

@@ -33,10 +33,10 @@ def section(modulus: ArrayLike, thickness: ArrayLike, height: ArrayLike) -> tupl
         E I per unit width [N mm].
     """
     e, t, z = (np.asarray(value, dtype=np.float64) for value in (modulus, thickness, height))
-    area = (e * t).sum(axis=-1)
-    neutral = (e * t * z).sum(axis=-1) / area
-    stiffness = (e * (t**3 / 12 + t * (z - neutral[..., None]) ** 2)).sum(axis=-1)
-    return neutral, stiffness
+    stretch = e * t
+    neutral = np.einsum("...s,...s->...", stretch, z) / np.einsum("...s->...", stretch)
+    arm = z - neutral[..., None]
+    return neutral, np.einsum("...s,...s->...", stretch, t * t / 12 + arm * arm)
 
 
 def lever_arms(
@@ -116,6 +116,11 @@ def station_heights(
     m = len(length)
     coupling, excess, pull = [], [], []
     for i in range(m):
+        if i and np.array_equal(length[i], length[i - 1]) and np.array_equal(root_softness[i], root_softness[i - 1]):
+            coupling.append(coupling[-1])  # equal bays behave alike
+            excess.append(excess[-1])
+            pull.append(pull[-1] if np.array_equal(z[i], z[i - 1]) else excess[-1] * z[i])
+            continue
         half = root_load * (root_softness[i] * 0.5)
         tanh = np.tanh(half * length[i])
         own = half * tanh
@@ -151,12 +156,12 @@ def _sweep(
     for i in range(1, m):
         over = excess[i - 1] + excess[i]
         over += kept
-        pivot = over + coupling[i]
-        towards = coupling[i] / pivot
+        per_pivot = np.reciprocal(over + coupling[i])
+        towards = coupling[i] * per_pivot
         gain = coupling[i - 1] * value[i - 1]
         gain += pull[i - 1]
         gain += pull[i]
-        gain /= pivot
+        gain *= per_pivot
         value.append(gain)
         ratio[i] = towards
         kept = over
@@ -168,5 +173,5 @@ def _sweep(
         last = z[m - 1] + np.zeros_like(coupling[0])
     value.append(last)
     for i in range(m - 1, -1 if clamped else 0, -1):
-        value[i] = value[i] + ratio[i] * value[i + 1]
+        value[i] += ratio[i] * value[i + 1]
     return value
