@@ -114,7 +114,9 @@ def station_heights(
         [mm]
     """
     m = len(length)
-    coupling, excess, pull = [], [], []
+    coupling: list[Array] = []
+    excess: list[Array] = []
+    pull: list[Array] = []
     for i in range(m):
         if i and np.array_equal(length[i], length[i - 1]) and np.array_equal(root_softness[i], root_softness[i - 1]):
             coupling.append(coupling[-1])  # equal bays behave alike
