@@ -7,7 +7,7 @@ to hole-edge stress, looks up its own S-N curve and sums its own damage.
 from __future__ import annotations
 
 from collections.abc import Callable
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 import pandas as pd
@@ -23,6 +23,7 @@ from fatigue.joint import Joint, solve_joint
 from fatigue.loads import CountedLoads, count_loads
 from fatigue.local import LocalStress, local_stress
 from fatigue.material.curves import CurveFamily, LocationCurves, stacked
+from fatigue.second import SecondOpinion, judged, second_opinion
 from fatigue.table import ranked_table
 from spectra import Cycles
 
@@ -88,6 +89,8 @@ class Estimate:
         One S-N curve per location.
     routes : dict of RouteResult
         ``none``, ``practice`` and ``contact``; ``snug`` is contact with no credit for interference or making.
+    opinion : SecondOpinion
+        Local-strain lives by the case's own route.
     threshold : ThresholdFactor
     rows : DataFrame
         One line per location, worst first; the columns of ``rows.csv``.
@@ -102,6 +105,7 @@ class Estimate:
     points: Governing
     curves: LocationCurves
     routes: dict[str, RouteResult]
+    opinion: SecondOpinion
     threshold: ThresholdFactor
     rows: pd.DataFrame
     order: NDArray[np.int64]
@@ -162,10 +166,31 @@ def estimate(
         name: route_result(peak, local.levels, loads, curves, case.life.damage_sum, case.loads.repeating)
         for name, peak in peaks.items()
     }
+    opinions = {
+        name: second_opinion(
+            case, result, local.levels, loads.cycles.count, curves.severity, residual_stress(filled, points, name)
+        )
+        for name, result in routes.items()
+        if name == case.life.credit or case.life.curve == "local-strain"
+    }
+    opinion = opinions[case.life.credit]
+    if case.life.curve == "local-strain":
+        routes = {name: judged(result, opinions[name]) for name, result in routes.items()}
+        opinion = replace(opinion, parted=("",) * opinion.life.size)
     factor = threshold_factor(case.inspection)
-    rows, order = ranked_table(case, loads, joint, local, filled, points, curves, routes, factor)
+    rows, order = ranked_table(case, loads, joint, local, filled, points, curves, routes, opinion, factor)
     report(4, 4)
-    return Estimate(case, loads, joint, local, filled, points, curves, routes, factor, rows, order)
+    return Estimate(case, loads, joint, local, filled, points, curves, routes, opinion, factor, rows, order)
+
+
+def residual_stress(filled: FilledHoles, points: Governing, route: str) -> Array:
+    """Return the residual stress as made and what of it is in a route's map, shape (L, 2) [MPa]."""
+    made = np.array([hole.residual_hoop for hole in filled.making])
+    if route != "contact":
+        return np.zeros((made.size, 2))
+    every = np.arange(made.size)
+    left = np.stack([part.left for part in filled.settled], axis=1)[every, points.way, points.point]
+    return np.column_stack([made, left])
 
 
 def load_levels(cycles: Cycles) -> Array:

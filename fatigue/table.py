@@ -18,6 +18,7 @@ from fatigue.joint import Joint
 from fatigue.loads import CountedLoads
 from fatigue.local import LocalStress
 from fatigue.material.curves import LocationCurves, stacked
+from fatigue.second import SecondOpinion
 
 if TYPE_CHECKING:
     from fatigue.life import RouteResult
@@ -34,6 +35,7 @@ def ranked_table(
     points: Governing,
     curves: LocationCurves,
     routes: dict[str, RouteResult],
+    opinion: SecondOpinion,
     factor: ThresholdFactor,
 ) -> tuple[pd.DataFrame, NDArray[np.int64]]:
     """Return the frame behind ``rows.csv`` and the location on each of its lines.
@@ -55,12 +57,13 @@ def ranked_table(
     left = np.stack([part.left for part in filled.settled], axis=1)
     by_way = life_in_flights(points.damage, case.life.damage_sum)
     flags = [
-        [*a, *b, *c, *d]
-        for a, b, c, d in zip(
+        [*a, *b, *c, *d, *filter(None, [e])]
+        for a, b, c, d, e in zip(
             geometry_flags(splice, joint, local),
             stress_flags(splice, joint, local),
             fit_flags(case, filled, points, routes),
             curve_flags(curves, own.low, own.high, own.by_cycle, own.recounted, own.folded),
+            opinion.parted,
             strict=True,
         )
     ]
@@ -100,6 +103,8 @@ def ranked_table(
             "life_bending_resisted_flights": by_way[:, 0],
             "life_bending_outside_flights": by_way[:, 1],
             "life_snug_flights": routes["snug"].life,
+            "life_local_strain_flights": opinion.life,
+            "stress_left_share": opinion.relaxed,
             "life_no_credit_flights": no_credit,
             "life_lower_kt_flights": lower,
             "life_upper_kt_flights": upper,

@@ -16,7 +16,7 @@ from fatigue.material import library
 from fatigue.material.curves import CurveFamily
 from fatigue.material.records import Fastener, Material
 from fatigue.splice import Countersink, End, HoleCondition, Practice, Row, Sheet, Splice, Start, Step
-from spectra.faults import Fault, InputFaults
+from spectra.faults import Fault, InputFaults, listed
 
 
 @dataclass(frozen=True, eq=False)
@@ -94,6 +94,8 @@ def parse_case(text: str, source: str, folder: Path) -> Case:
     assert tables.inspection is not None
     splice = _splice(tables, tables.splice)
     faults += joint_faults(splice)
+    if tables.life.curve == "local-strain":
+        faults += _no_strain_life(splice)
     families: dict[str, CurveFamily] = {}
     for sheet in splice.sheets:
         try:
@@ -114,6 +116,12 @@ def parse_case(text: str, source: str, folder: Path) -> Case:
         families=families,
         echo=tables.echo,
     )
+
+
+def _no_strain_life(splice: Splice) -> list[Fault]:
+    known = f"Use a material that has them, or name them in [material]: {listed(library.strain_lives())}."
+    wanting = dict.fromkeys(sheet.material.name for sheet in splice.sheets if not sheet.material.strain_life)
+    return [Fault("life.curve", f'"{name}" has no strain-life constants.', known) for name in wanting]
 
 
 def _splice(tables: Tables, table: schema.SpliceTable) -> Splice:
@@ -201,6 +209,7 @@ def _material(name: str, table: schema.MaterialTable) -> Material:
         yield_stress=table.yield_MPa,
         ultimate=table.ultimate_MPa or table.yield_MPa,
         curve=table.curve,
+        strain_life=table.strain_life or "",
         source="the case file",
         how="given by the user",
     )

@@ -37,6 +37,9 @@ def cross_checks(tables: Tables, folder: Path) -> Iterator[Fault]:
     for name, material in tables.materials.items():
         if material is not None:
             yield from _curve(material.curve, f"material.{name}.curve", folder)
+            if material.strain_life is not None:
+                known = list(library.strain_lives())
+                yield from _known(material.strain_life, known, f"material.{name}.strain_life", "set of constants")
             if material.ultimate_MPa is not None and material.ultimate_MPa < material.yield_MPa:
                 yield Fault(
                     f"material.{name}.ultimate_MPa",

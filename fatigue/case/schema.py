@@ -144,6 +144,7 @@ class MaterialTable(Table):
     yield_MPa: Annotated[float, Field(gt=0, le=1e5)]
     ultimate_MPa: Annotated[float, Field(gt=0, le=1e5)] | None = None
     curve: Text
+    strain_life: Text | None = None
 
 
 class FastenerTable(Table):
@@ -158,7 +159,7 @@ class LifeTable(Table):
     """`[life]`: the route to the life."""
 
     credit: Literal["none", "practice", "contact"] = "contact"
-    curve: Literal["notched"] = "notched"
+    curve: Literal["notched", "local-strain"] = "notched"
     tail: Literal["limit", "continued", "shallower"] = "continued"
     damage_sum: Annotated[float, Field(gt=0, le=10)] = 1.0
 

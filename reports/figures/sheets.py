@@ -9,6 +9,7 @@ from fatigue.life import Estimate
 from reports.figures.curve import draw_curve
 from reports.figures.fits import draw_life_against_fit
 from reports.figures.loads import draw_damage_by_range, draw_exceedances
+from reports.figures.loops import draw_loops
 from reports.figures.makeup import MOST_LINES, draw_makeup
 from reports.figures.section import draw_section
 from reports.figures.style import new_figure, styled
@@ -40,10 +41,12 @@ def loads_figure(estimate: Estimate) -> Figure:
 
 
 def curve_figure(estimate: Estimate) -> Figure:
-    """Return the S-N family with the governing location's cycles."""
+    """Return the S-N family with the governing location's cycles, and its loops by the second opinion."""
     with styled():
-        figure = new_figure(7.0, 4.2)
-        draw_curve(figure.subplots(), estimate)
+        figure = new_figure(9.4, 4.0)
+        left, right = figure.subplots(1, 2, width_ratios=[1.5, 1.0])
+        draw_curve(left, estimate)
+        draw_loops(right, estimate)
     return figure
 
 
