@@ -15,6 +15,7 @@ COMMANDS = {
     "compare": "Put hole conditions of one case, or several cases, beside each other.",
     "hole": "Solve one hole: peak stress, range factor and contact.",
     "new": "Write a commented starter case.",
+    "fit": "Fit an S-N family to test results with run-outs.",
     "count": "Count a recorded history's rainflow cycles.",
     "spectrum": "Show a shipped or own spectrum: its flights, phases and cycles.",
     "evidence": "Compute every published check now, beside the printed value.",
