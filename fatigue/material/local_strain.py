@@ -127,8 +127,9 @@ def local_strain_life(
     by_cycle = np.asarray(count, dtype=np.float64) / lives
     with np.errstate(divide="ignore", over="ignore"):
         life = damage_sum / by_cycle.sum(axis=1)
-    with np.errstate(divide="ignore", invalid="ignore"):
-        relaxed = np.where(loops.initial == 0.0, 1.0, loops.unloaded / loops.initial)
+    # an initial stress too small to matter would make the share of it overflow
+    initial = np.where(np.abs(loops.initial) < 1e-6, np.nan, loops.initial)
+    relaxed = np.where(np.isnan(initial), 1.0, loops.unloaded / initial)
     return LocalStrain(loops, lives, by_cycle, life, relaxed)
 
 

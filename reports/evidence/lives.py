@@ -4,14 +4,16 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from functools import cache, partial
+from importlib import resources
 from pathlib import Path
 
 import numpy as np
 
 import fatigue
 from fatigue.material import mean_stress
-from fatigue.material.least_squares import StraightLine, straight_line
+from fatigue.material.least_squares import StraightLine, line_through_origin, straight_line
 from fatigue.material.library import family, strain_life
+from fatigue.material.life_sample import fit_lives
 from fatigue.material.strain import life_at_strain
 from fatigue.scatter import first_of_many_factor
 from reports.evidence.check import Check, Checks
@@ -73,6 +75,28 @@ def _e739() -> StraightLine:
     return straight_line(np.log10(strain), np.log10(cycles))
 
 
+def column(name: str) -> np.ndarray:
+    """Return the numbers of a stored table."""
+    text = resources.files("reports.evidence").joinpath(f"data/{name}").read_text(encoding="utf-8")
+    return np.array([[float(cell) for cell in line.split(",")] for line in text.splitlines()[1:]])
+
+
+@cache
+def _norris() -> StraightLine:
+    y, x = column("norris.csv").T
+    return straight_line(x, y)
+
+
+@cache
+def _through_origin() -> tuple[float, float, float]:
+    return line_through_origin(np.arange(60.0, 71.0), np.arange(130.0, 141.0))
+
+
+def lives_1969() -> np.ndarray:
+    """Return the lives of 101 coupons of 6061-T6 at 21 ksi [thousands of cycles]."""
+    return column("lives_6061_t6.csv")[:, 0]
+
+
 @cache
 def _lap() -> fatigue.Estimate:
     return fatigue.estimate(fatigue.parse_case(LAP, "plausibility lap", Path()))
@@ -116,6 +140,27 @@ def checks() -> list[Check]:
         ("B, upper end of 95 %", "-1.2974", lambda: _e739().slope_interval[1]),
     ):
         add("fits", f"standard worked example: {what}", printed, compute, "astm-e739", how="memory")
+    nist = "nist-strd"
+    for what, printed, compute in (
+        ("Norris: intercept", "-0.262323073774029", lambda: _norris().intercept),
+        ("Norris: slope", "1.00211681802045", lambda: _norris().slope),
+        ("Norris: error of the intercept", "0.232818234301152", lambda: _norris().intercept_error),
+        ("Norris: error of the slope", "0.000429796848199937", lambda: _norris().slope_error),
+        ("Norris: residual deviation", "0.884796396144373", lambda: float(np.sqrt(_norris().variance))),
+        ("NoInt1: slope", "2.07438016528926", lambda: _through_origin()[0]),
+        ("NoInt1: error of the slope", "0.0165289256198347", lambda: _through_origin()[1]),
+        ("NoInt1: residual deviation", "3.56753034006338", lambda: _through_origin()[2]),
+    ):
+        within = 1e-11 * abs(float(printed))
+        add("fits", f"certified regression, {what}", printed, compute, nist, how="memory", within=within,
+            reason="eleven digits of fifteen: double precision")  # fmt: skip
+    coupons, study = "101 lives of 6061-T6", "birnbaum-saunders-1969"
+    for what, printed, compute in (
+        ("scatter of log10 N", "0.13288", lambda: np.log10(lives_1969()).std(ddof=1)),
+        ("Weibull shape", "3.946", lambda: fit_lives(lives_1969(), law="weibull").weibull_shape),
+        ("Weibull scale, kcycles", "1545.96", lambda: fit_lives(lives_1969(), law="weibull").weibull_scale),
+    ):
+        add("fits", f"{coupons}: {what}", printed, compute, study, how="read")
     add("scatter", "scatter 0.14, 99.9 %, one article, sigma known", "4.091",
         lambda: 1 / (float(first_of_many_factor(0.999, 1, 0.14 * np.sqrt(2)))), "weakest-link")  # fmt: skip
     add("scatter", "median of the first of 20, lognormal 0.15, over one hole's", "0.5326",

@@ -97,6 +97,10 @@ def draw_residuals(ax: Axes, found: FittedTests) -> Axes:
 def draw_candidates(ax: Axes, found: FittedTests) -> Axes:
     """Draw how much worse every model tried is than the best, by the information criterion."""
     ranked = [one for one in found.choice.candidates if np.isfinite(one.aicc)]
+    if not ranked:
+        ax.text(0.5, 0.5, "too few tests to tell models apart", ha="center", color=SOFT, transform=ax.transAxes)
+        ax.set_axis_off()
+        return ax
     worse = np.array([one.aicc - ranked[0].aicc for one in ranked])
     y = np.arange(len(ranked))
     colours = [MARK if one is found.choice.taken else SOFT for one in ranked]
