@@ -73,6 +73,8 @@ def stress_flags(splice: Splice, joint: Joint, local: LocalStress) -> list[list[
     for i, (_, s) in enumerate(splice.locations):
         material, own = splice.sheets[s].material, []
         net = local.net[i].max()
+        if material.flag:
+            own.append(material.flag)
         if net > material.ultimate:
             own.append(f"net section {net:.0f} MPa above the sheet's strength {material.ultimate:.0f} MPa")
         elif net > material.yield_stress:

@@ -29,8 +29,10 @@ def _materials() -> list[str]:
         m = library.material(name)
         lines += [
             f"  {name}: E {m.modulus:g} MPa, nu {m.poisson:g}, yield {m.yield_stress:g} MPa, "
-            f"strength {m.ultimate:g} MPa, S-N family {m.curve}",
-            f"    {m.source} [{m.how}]",
+            f"strength {m.ultimate:g} MPa",
+            f"    {m.form}; {m.source} [{m.how}]",
+            f"    S-N family {m.curve or 'none: give your own in [material]'}; strain life {m.strain_life or 'none'}",
+            *(f"    note: {text}" for text in (m.note, m.flag) if text),
         ]
     return lines
 

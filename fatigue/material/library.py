@@ -71,6 +71,7 @@ def material(name: str) -> Material:
         how=entry["how"],
         form=entry["form"],
         strain_life=entry.get("strain_life", ""),
+        flag=entry.get("flag", ""),
         note=entry.get("note", ""),
     )
 

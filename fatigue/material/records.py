@@ -29,6 +29,8 @@ class Material:
         Name of the strain-life constants; empty where there are none.
     note : str
         What the reader must know before using it.
+    flag : str
+        What is said of every location in it.
     """
 
     name: str
@@ -42,6 +44,7 @@ class Material:
     form: str = ""
     strain_life: str = ""
     note: str = ""
+    flag: str = ""
 
 
 @dataclass(frozen=True)
