@@ -18,6 +18,8 @@ from fatigue.splice import Splice
 Array = NDArray[np.float64]
 
 KINDS_SPAN = ("loosest", "tightest")
+MOST_SOLUTIONS = 600
+"""Fits times locations from which on fewer fits are computed."""
 FIT_STEPS = 31
 """Fits the curve of life against fit is computed at."""
 
@@ -189,8 +191,10 @@ def fit_curves(
     span : tuple of float
         Interference over the diameter.
     steps : int
+        Fewer, but at least 7, where the splice has very many locations.
     on_progress : callable, optional
     """
+    steps = min(steps, max(7, MOST_SOLUTIONS // len(base.case.splice.locations)))
     report = on_progress or (lambda done, total: None)
     fits = np.unique(np.append(np.linspace(*span, steps), 0.0))
     solved = []

@@ -14,6 +14,7 @@ FENCES = re.findall(r"^```(\w+)\n(.*?)^```", README, flags=re.MULTILINE | re.DOT
 SET_UP = "python3 -m venv .venv && .venv/bin/python -m pip install --quiet"
 SHELL = [text for language, text in FENCES if language == "sh"]
 PYTHON = [text for language, text in FENCES if language == "python"]
+CONSOLE = [text for language, text in FENCES if language == "console"]
 PATH = f"{Path(sys.executable).parent}{os.pathsep}{os.environ['PATH']}"
 
 
@@ -29,9 +30,8 @@ def run(command, folder):
 
 
 def test_every_fence_is_run_here():
-    assert {language for language, _ in FENCES} == {"sh", "python"}
-    assert SHELL
-    assert PYTHON
+    assert {language for language, _ in FENCES} == {"sh", "python", "console"}
+    assert all([SHELL, PYTHON, CONSOLE])
 
 
 @pytest.mark.parametrize("heading", ["Run it", "Test it"])
@@ -57,9 +57,15 @@ def test_run_it(tmp_path):
         assert (tmp_path / "faying-out" / name).is_file(), name
 
 
-@pytest.mark.parametrize("script", [text for text in SHELL if not text.startswith(SET_UP)])
-def test_shell(script, tmp_path):
-    assert run(["bash", "-euo", "pipefail", "-c", script], tmp_path).strip()
+def test_console_blocks_in_one_folder(tmp_path):
+    """Every command runs, in order, and every line shown under it is in what it prints, whatever the spaces."""
+    for line in "".join(CONSOLE).splitlines():
+        if line.startswith("$ "):
+            printed = run(["bash", "-euo", "pipefail", "-c", line[2:]], tmp_path).split("\n")
+            seen = {" ".join(own.split()) for own in printed}
+        elif line != "...":
+            wanted = " ".join(line.split())
+            assert any(wanted in own for own in seen), f"{line!r} is not among {sorted(seen)}"
 
 
 @pytest.mark.parametrize("program", PYTHON)
