@@ -140,11 +140,18 @@ def open_csv(path: Path, wanted: Sequence[str]) -> CsvFile:
     return CsvFile(path, names, delimiter, decimal, header, units)
 
 
-def numbers(values: NDArray[Any]) -> NDArray[np.float64]:
-    """Return values as numbers, NaN where they are none."""
+def numbers(values: NDArray[Any], decimal: str = ".") -> NDArray[np.float64]:
+    """Return values as numbers, NaN where they are none.
+
+    >>> numbers(np.array(["2,5", "ERR", "3"], dtype=object), ",")
+    array([2.5, nan, 3. ])
+    """
     if np.issubdtype(values.dtype, np.number):
         return values.astype(np.float64, copy=False)
-    return np.asarray(pd.to_numeric(pd.Series(values), errors="coerce"), dtype=np.float64)
+    given = pd.Series(values)
+    if decimal != ".":
+        given = given.astype("string").str.replace(decimal, ".", regex=False)
+    return np.asarray(pd.to_numeric(given, errors="coerce"), dtype=np.float64)
 
 
 def _fields(line: str, delimiter: str) -> list[str]:

@@ -16,7 +16,7 @@ Array = NDArray[np.float64]
 Index = NDArray[np.intp]
 
 KINDS = ("missing", "spikes", "drop-outs")
-TIMES_USUAL = 8.0
+TIMES_USUAL = 4.0
 """A spike stands off its neighbours so many times as far as one turning point in a thousand (own rule, no source)."""
 USUAL = 0.999
 LONGEST = 1000

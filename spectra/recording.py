@@ -84,13 +84,16 @@ class Recording:
         missing = [d for d in found if d.kind == "missing" and "missing" not in kinds]
         if missing:
             problem = f"{self.told(missing[0])}: not finite numbers."
-            remedy = "Mend the file, or have them left out and listed: repair missing."
+            remedy = "Mend the file, or leave them out and have them listed with --repair missing."
             raise InputFaults(str(self.file.path), [Fault(self.column, problem, remedy)])
         said = tuple(("left out " if d.kind in kinds else "kept ") + self.told(d) for d in found)
         kept = replace(self, notes=self.notes + said)
         if not any(d.kind in kinds for d in found):
             return kept
         values, out = repaired(self.values, found, kinds)
+        if not values.size:
+            problem = f"nothing is left without {self.told(found[0])}."
+            raise InputFaults(str(self.file.path), [Fault(self.column, problem, "Look at the file.")])
         return replace(kept, values=values, time=None if self.time is None else without(self.time, out))
 
     def flights(self, rule: GroundRule) -> Flights:
@@ -207,15 +210,16 @@ def _read(
     factors = dict(channels or {column: 1.0})
     values, times = Store(), Store()
     seen: dict[int, str] = {}
+    decimal = file.decimal if isinstance(file, CsvFile) else "."
     for block in file.blocks([*factors, *([time] if time else [])], on_progress):
         total: Array | float = 0.0
         for name, factor in factors.items():
-            x = numbers(block[name])
+            x = numbers(block[name], decimal)
             _look(seen, block[name], x, values.size)
             total = total + (x if factor == 1.0 else factor * x)
         values.append(np.asarray(total))
         if time:
-            times.append(_seconds(block[time]))
+            times.append(_seconds(block[time], decimal))
     recording = Recording(file, column, values.values(), times.values() if time else None, seen)
     return _timed(recording, time) if time else recording
 
@@ -224,15 +228,15 @@ def _look(seen: dict[int, str], given: NDArray[Any], x: Array, before: int) -> N
     """Keep the text of the first cells that hold no number."""
     if len(seen) >= MOST_SEEN or given.dtype != object:
         return
-    for row in np.flatnonzero(~np.isfinite(x))[: MOST_SEEN - len(seen)]:
-        if isinstance(given[row], str):
-            seen[before + int(row)] = show(given[row], 20)
+    bad = np.flatnonzero(~np.isfinite(x))
+    for row in [row for row in bad[:1000] if isinstance(given[row], str)][: MOST_SEEN - len(seen)]:
+        seen[before + int(row)] = show(given[row], 20)
 
 
-def _seconds(given: NDArray[Any]) -> Array:
+def _seconds(given: NDArray[Any], decimal: str) -> Array:
     """Return times as seconds: numbers as they are, dates since 1970."""
     if np.issubdtype(given.dtype, np.datetime64) or given.dtype == object:
-        x = numbers(given) if given.dtype == object else np.full(given.size, np.nan)
+        x = numbers(given, decimal) if given.dtype == object else np.full(given.size, np.nan)
         if np.isnan(x).all():
             dates = pd.to_datetime(pd.Series(given), errors="coerce", utc=True)
             x = (dates - pd.Timestamp(0, tz="UTC")).dt.total_seconds().to_numpy()

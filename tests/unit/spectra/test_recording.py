@@ -1,6 +1,7 @@
 """Recorded histories: files of all kinds, defects, flights."""
 
 import gzip
+from importlib import resources
 
 import numpy as np
 import pandas as pd
@@ -11,6 +12,7 @@ from spectra import store
 from spectra.defects import find_defects, usual_prominence
 from spectra.flights import GroundRule, find_flights
 from spectra.recording import read_recording
+from tests.unit.spectra.recorded_six_flights import NAME, recording_text
 
 VALUES = [0.0, 50.5, 10.25, 90.0, -3.5]
 
@@ -39,6 +41,14 @@ class TestCsv:
             f"{i}{delimiter}{str(v).replace('.', ',')}" for i, v in enumerate(VALUES)
         ]
         assert read(write(tmp_path, "\n".join(lines))) == VALUES
+
+    def test_text_among_decimal_commas(self, tmp_path):
+        recording = read_recording(
+            write(tmp_path, "t;stress_MPa\n0,5;1,25\n1,5;ERR\n2,5;3,5\n"), "stress_MPa", time="t"
+        )
+        assert recording.values.tolist()[::2] == [1.25, 3.5]
+        assert recording.seen == {1: "'ERR'"}
+        assert recording.time.tolist() == [0.5, 1.5, 2.5]
 
     def test_one_column(self, tmp_path):
         assert read(write(tmp_path, "stress_MPa\n" + "\n".join(map(str, VALUES)))) == VALUES
@@ -110,6 +120,11 @@ class TestOtherFiles:
         assert recording.values.tolist() == values.tolist()
 
 
+def test_the_shipped_recording_is_made_as_said():
+    text = (resources.files("spectra.library") / NAME).read_text(encoding="utf-8")
+    assert text == recording_text()
+
+
 def noisy(size=5000, seed=3):
     return np.random.default_rng(seed).normal(60.0, 5.0, size).round(2)
 
@@ -136,8 +151,8 @@ class TestDefects:
 
     def test_a_threshold_may_be_given(self):
         x = noisy()
-        x[2000] = 130.0
-        assert usual_prominence(x) > 80
+        x[2000] = 110.0
+        assert usual_prominence(x) > 60
         assert find_defects(x) == ()
         assert [d.start.tolist() for d in find_defects(x, threshold=40.0)] == [[2000]]
 
@@ -185,7 +200,7 @@ class TestDefects:
             spectra.read_history(path, "stress_MPa", 1)
         assert str(caught.value) == (
             f"{path}: one fault\n  stress_MPa: 1 missing value: line 3 ('n/a!'): not finite numbers. "
-            "Mend the file, or have them left out and listed: repair missing."
+            "Mend the file, or leave them out and have them listed with --repair missing."
         )
 
 
@@ -381,6 +396,11 @@ class TestBadRecordings:
         path = write(tmp_path, "stress_MPa\n1\n2\n")
         with pytest.raises(spectra.InputFaults, match=r'repair: "spike" cannot be left out\. Did you mean spikes\?'):
             spectra.read_history(path, "stress_MPa", 1, repair=["spike"])
+
+    def test_nothing_left(self, tmp_path):
+        path = write(tmp_path, "stress_MPa\nx\ny\n")
+        with pytest.raises(spectra.InputFaults, match=r"nothing is left without 2 missing values: line 2 \('x'\)"):
+            spectra.read_history(path, "stress_MPa", 1, repair=["missing"])
 
     @pytest.mark.parametrize("flights", [0, -3, np.nan, np.inf])
     def test_impossible_flights(self, tmp_path, flights):
