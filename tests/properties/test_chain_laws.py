@@ -100,7 +100,8 @@ def test_life_never_rises_with_the_range(credit, lap, low, more):
     high = lap.blocks[0][0]
     low = min(low, high - 1.0)
     lives = [replace(lap, credit=credit, blocks=((high, bottom, 1.0),)).life() for bottom in (low, low - more)]
-    assert (lives[1] <= lives[0] * (1 + 1e-9)).all()
+    # the severity is a secant of a slightly bent map: from 0.001 MPa on or from 0 it differs in the sixth digit
+    assert (lives[1] <= lives[0] * (1 + 1e-6)).all()
 
 
 @few
