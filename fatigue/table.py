@@ -51,6 +51,11 @@ def ranked_table(
     share_used = np.where(np.isfinite(threshold), case.loads.flown_flights / threshold, 0.0)
     top = local.levels.size - 1
     loads_at_top = joint.loads(local.levels[top:])
+    shared = joint.transfer
+    if joint.slack is not None and local.levels[top] > 0.0:
+        # late rows share as they do at the largest load
+        remote = local.levels[top] * float(joint.arrays.first_thickness(joint.layout))
+        shared = loads_at_top.transfer[:, 0] * joint.thickness / remote
     lower, upper = neighbour_lives(case, curves, own, loads)
     every = np.arange(joint.row.size)
     fit_worth = worth(filled.credited[every, points.way], local.untreated)
@@ -74,7 +79,7 @@ def ranked_table(
             "sheet": [splice.sheets[s].name for s in joint.sheet],
             "face": joint.face,
             "hidden": joint.hidden,
-            "transfer_fraction": joint.transfer,
+            "transfer_fraction": shared,
             "bypass_MPa": loads_at_top.bypass[:, 0],
             "bearing_MPa": loads_at_top.bearing[:, 0],
             "bending_MPa": local.bending[:, top] + 0.0,

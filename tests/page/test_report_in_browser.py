@@ -52,6 +52,13 @@ def test_nothing_is_asked_of_any_other_place(page):
     assert page.stat().st_size < 3_000_000
 
 
+def test_the_same_case_gives_the_same_bytes(page):
+    again = page.parent / "again"
+    reports.write(fatigue.estimate(fatigue.read_case(fatigue.demo_case())), again)
+    for path in again.iterdir():
+        assert path.read_bytes() == (page.parent / path.name).read_bytes(), path.name
+
+
 def test_every_figure_and_table_has_its_words(page):
     text = page.read_text(encoding="utf-8")
     assert len(re.findall(r"<svg", text)) == len(re.findall(r'<svg role="img" aria-label="[^"]+"', text))
@@ -103,3 +110,14 @@ def test_prints_whole(page):
     browse(page, "--no-pdf-header-footer", f"--print-to-pdf={pdf}")
     pages = len(re.findall(rb"/Type\s*/Page\b", pdf.read_bytes()))
     assert 6 <= pages <= 14
+
+
+@needs_browser
+def test_parts_can_be_hidden(page):
+    script = """
+      const part = document.querySelector("details");
+      const before = document.documentElement.scrollHeight;
+      part.querySelector("summary").click();
+      document.title = `${part.open} ${document.documentElement.scrollHeight < before}`;
+    """
+    assert "<title>false true</title>" in browse(with_script(page, script), "--dump-dom").stdout

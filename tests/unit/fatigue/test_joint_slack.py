@@ -5,6 +5,7 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
+import fatigue
 from fatigue.joint import solve_joint
 from tests.support import make_lap
 
@@ -78,3 +79,14 @@ def test_friction_share_takes_bearing_off_and_nothing_else():
     plain, held = solve_joint(lap).loads([100.0]), solve_joint(clamped).loads([100.0])
     np.testing.assert_allclose(held.bearing, 0.7 * plain.bearing)
     np.testing.assert_allclose(held.transfer, plain.transfer)
+
+
+def test_a_case_with_slack_says_when_the_row_works(lap_text, tmp_path):
+    text = lap_text.replace('name = "B"', 'name = "B"\nslack_mm = 0.02')
+    one = fatigue.estimate(fatigue.parse_case(text, "case.toml", tmp_path))
+    rows = one.rows.set_index(["row", "sheet"])
+    closing = one.joint.closing_stress[1]
+    assert f"slack 0.02 mm: the row takes load from {closing:.0f} MPa" in rows.loc[("B", "upper"), "flags"]
+    assert rows["transfer_fraction"].groupby("sheet").sum().tolist() == pytest.approx([1.0, 1.0])
+    tight = fatigue.estimate(fatigue.parse_case(lap_text, "case.toml", tmp_path)).rows
+    assert rows["life_flights"].min() < tight["life_flights"].min()
