@@ -3,6 +3,10 @@
 from __future__ import annotations
 
 import os
+
+for library in ("OMP_NUM_THREADS", "OPENBLAS_NUM_THREADS", "MKL_NUM_THREADS"):
+    os.environ.setdefault(library, "1")  # two workers share the cores already
+
 from pathlib import Path
 
 import pytest

@@ -1,6 +1,6 @@
 """No case file, however spoilt, makes more than a message: no traceback, no hang, no NaN, no infinity without a flag.
 
-`FUZZ=100000 pytest tests/fuzz -n 2` draws that many; by default a few thousand.
+`FUZZ=100000 pytest tests/fuzz -n 2` draws that many; by default a few hundred.
 """
 
 from __future__ import annotations
@@ -20,7 +20,7 @@ from spectra.faults import InputFaults
 from tests.conftest import LAP
 from tests.fuzz.mutations import spoilt
 
-EXAMPLES = int(os.environ.get("FUZZ", "1500"))
+EXAMPLES = int(os.environ.get("FUZZ", "600"))
 STARTS = [LAP, LAP.replace('"practice"', '"contact"'), fatigue.starter_text().replace('"short-hops"', '"long-range"')]
 CHEAP = settings(max_examples=EXAMPLES, deadline=None, suppress_health_check=list(HealthCheck))
 DEAR = settings(max_examples=max(EXAMPLES // 10, 50), deadline=None, suppress_health_check=list(HealthCheck))
