@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from importlib import import_module
+from keyword import iskeyword
 
 import click
 
@@ -12,6 +13,7 @@ click.UsageError.exit_code = 1
 COMMANDS = {
     "life": "Estimate the life of every row and sheet of a case and write the report.",
     "demo": "Run a shipped, invented case.",
+    "try": "Open a local page where a splice answers as it is changed.",
     "compare": "Put hole conditions of one case, or several cases, beside each other.",
     "hole": "Solve one hole: peak stress, range factor and contact.",
     "new": "Write a commented starter case.",
@@ -21,7 +23,8 @@ COMMANDS = {
     "evidence": "Compute every published check now, beside the printed value.",
     "sources": "Print materials, fasteners, curves, spectra and methods with where they come from.",
 }
-"""Each in a module of its name in `reports.commands`, as a function of its name; here with its line of help."""
+"""Each in a module of its name in `reports.commands`, as a function of its name (`try_` for a word that Python keeps);
+here with its line of help."""
 
 
 class LazyGroup(click.Group):
@@ -35,7 +38,8 @@ class LazyGroup(click.Group):
         """Return a command by name."""
         if cmd_name not in COMMANDS:
             return None
-        command = getattr(import_module(f"reports.commands.{cmd_name}"), cmd_name)
+        name = f"{cmd_name}_" if iskeyword(cmd_name) else cmd_name
+        command = getattr(import_module(f"reports.commands.{name}"), name)
         assert isinstance(command, click.Command)
         return command
 

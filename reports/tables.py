@@ -85,7 +85,7 @@ def result_json(estimate: Estimate, inch: bool = False) -> str:
         ],
         "cautions": list(CAUTIONS),
     }
-    return json.dumps(_plain(content), indent=2, ensure_ascii=False, allow_nan=False) + "\n"
+    return json.dumps(plain_values(content), indent=2, ensure_ascii=False, allow_nan=False) + "\n"
 
 
 def versions() -> dict[str, str]:
@@ -99,14 +99,14 @@ def versions() -> dict[str, str]:
     return found
 
 
-def _plain(value: Any) -> Any:
+def plain_values(value: Any) -> Any:
     """Return a value in JSON's own types, NaN and infinity as null."""
     if isinstance(value, dict):
-        return {str(key): _plain(item) for key, item in value.items()}
+        return {str(key): plain_values(item) for key, item in value.items()}
     if isinstance(value, list | tuple):
-        return [_plain(item) for item in value]
+        return [plain_values(item) for item in value]
     if isinstance(value, np.generic):
-        return _plain(value.item())
+        return plain_values(value.item())
     if isinstance(value, float) and not math.isfinite(value):
         return None
     return value

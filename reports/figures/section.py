@@ -33,7 +33,7 @@ def draw_section(ax: Axes, estimate: Estimate) -> Axes:
     Axes
     """
     splice, joint = estimate.case.splice, estimate.joint
-    left, right = _reach(splice)
+    left, right = reach(splice)
     if splice.to_centre > 0.0:
         _other_half(ax, splice, joint, left, right)
     _sheets(ax, splice, joint, left, right)
@@ -56,7 +56,7 @@ def draw_section(ax: Axes, estimate: Estimate) -> Axes:
     return ax
 
 
-def _reach(splice: Splice) -> tuple[float, float]:
+def reach(splice: Splice) -> tuple[float, float]:
     """Return how far left and right the section is drawn: the free lengths are cut short."""
     span = splice.rows[-1].position
     stub = max(4.5 * max(row.hole_diameter for row in splice.rows), 0.28 * span)
@@ -82,7 +82,7 @@ def _other_half(ax: Axes, splice: Splice, joint: Joint, left: float, right: floa
     for r, row in enumerate(splice.rows):
         x = 2 * right - row.position
         if x + row.hole_diameter < right + _ghost(splice):
-            heights = [_at_hole(joint, i) for i, place in enumerate(splice.locations) if place[0] == r]
+            heights = [at_hole(joint, i) for i, place in enumerate(splice.locations) if place[0] == r]
             low, high = min(m - t / 2 for m, t in heights), max(m + t / 2 for m, t in heights)
             d = row.hole_diameter
             ax.add_patch(Rectangle((x - d / 2, low), d, high - low, zorder=0.6, **style))
@@ -156,7 +156,7 @@ def _damage(ax: Axes, estimate: Estimate) -> None:
     for i, (r, _) in enumerate(splice.locations):
         row = splice.rows[r]
         colour = DAMAGE(norm(max(damage[i] / worst, SHADES))) if worst > 0 else METAL
-        middle, thickness = _at_hole(joint, i)
+        middle, thickness = at_hole(joint, i)
         reach = 1.15 * row.hole_diameter
         ax.add_patch(
             Rectangle(
@@ -171,7 +171,7 @@ def _damage(ax: Axes, estimate: Estimate) -> None:
         )
 
 
-def _at_hole(joint: Joint, location: int) -> tuple[float, float]:
+def at_hole(joint: Joint, location: int) -> tuple[float, float]:
     """Return mid-plane height and thickness of a sheet at one of its holes [mm]."""
     r, s = int(joint.row[location]), int(joint.sheet[location])
     beam = joint.beam
@@ -183,8 +183,8 @@ def _fastener(ax: Axes, splice: Splice, joint: Joint, r: int) -> None:
     row = splice.rows[r]
     d = row.hole_diameter
     here = [i for i, place in enumerate(splice.locations) if place[0] == r]
-    tops = [sum((m, t / 2)) for m, t in (_at_hole(joint, i) for i in here)]
-    bottoms = [m - t / 2 for m, t in (_at_hole(joint, i) for i in here)]
+    tops = [sum((m, t / 2)) for m, t in (at_hole(joint, i) for i in here)]
+    bottoms = [m - t / 2 for m, t in (at_hole(joint, i) for i in here)]
     top, bottom = max(tops), min(bottoms)
     style: dict[str, Any] = {"facecolor": PAPER, "edgecolor": INK, "lw": 0.9, "zorder": 5}
     sink = row.countersink
@@ -300,7 +300,7 @@ def _critical(ax: Axes, estimate: Estimate, right: float) -> None:
     i = estimate.governing
     r, s = splice.locations[i]
     row, sheet = splice.rows[r], splice.sheets[s]
-    middle, thickness = _at_hole(joint, i)
+    middle, thickness = at_hole(joint, i)
     face = joint.face[i]
     y = middle + {"upper": 0.5, "lower": -0.5, "": 0.0}[face] * thickness
     for side in (-0.5, 0.5):

@@ -1,0 +1,1 @@
+"""The local page where a splice answers as it is changed: `faying try`."""

@@ -1,0 +1,1 @@
+"""The page's own files, served as they are."""
