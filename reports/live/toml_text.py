@@ -50,7 +50,12 @@ def toml_text(document: dict[str, Any]) -> str:
         if isinstance(value, list) and _stands_alone(value):
             for item in value:
                 lines += ["", f"[[{_key(key)}]]", *_pairs(item)]
-        elif isinstance(value, dict) and key in schema.NAMED and all(isinstance(own, dict) for own in value.values()):
+        elif (
+            isinstance(value, dict)
+            and value
+            and key in schema.NAMED
+            and all(isinstance(own, dict) for own in value.values())
+        ):
             for name, own in value.items():
                 lines += ["", f"[{_key(key)}.{_key(name)}]", *_pairs(own)]
         elif isinstance(value, dict):

@@ -89,11 +89,10 @@ export function buildFields(place, document, form, change) {
 
   function field(path, value, spec, exact) {
     const where = nameKey(path), key = path.at(-1);
-    const inner = where.split(/[.\]]/).length > 3 && path.length > 2 && !["row", "sheet", "hole", "material", "fastener"].includes(path[0]);
-    const words = path.slice(form.tables[path[0]] ? (form.listed.includes(path[0]) || form.named.includes(path[0]) ? 2 : 1) : 0);
+    const within = form.listed.includes(path[0]) || form.named.includes(path[0]) ? 2 : form.tables[path[0]] ? 1 : 0;
     const id = `f-${where.replace(/[^A-Za-z0-9]+/g, "-")}`;
     const made = element("div", { className: "field", "data-where": where });
-    const label = element("label", { htmlFor: id }, inner ? nameKey(words) : nameKey(words) || key);
+    const label = element("label", { htmlFor: id }, nameKey(path.slice(within)) || key);
     const choices = spec.choices ?? names(document, form, path[0], key);
     let input;
     if (choices) {
@@ -115,6 +114,7 @@ export function buildFields(place, document, form, change) {
       input.addEventListener("input", () => take(input.value, input));
       if (slider) { slider.addEventListener("input", () => take(slider.value, slider)); made.append(slider); }
     } else {
+      if (key === "title") made.classList.add("broad");
       input = element("input", { id, type: "text", value: String(value), spellcheck: false });
       input.addEventListener("input", () => change(path, input.value));
       // others name it: their choices follow once it is written

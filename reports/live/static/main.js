@@ -91,7 +91,8 @@ function draw() {
   const places = good.rows.map((line) => `${line.row}|${line.sheet}`);
   const chosen = places.includes(state.chosen) ? state.chosen : places[0];
   drawSection(at("section"), good, chosen, choose);
-  at("answer").textContent = [...good.sentences, ...good.loads.notes].join(" ");
+  at("answer").textContent = good.sentences.join(" ");
+  at("loads").textContent = [`Loads: ${good.loads.name}, ${good.loads.cycles.toPrecision(4)} cycles a flight, up to ${good.loads.largest.toFixed(0)} MPa.`, ...good.loads.notes].join(" ");
   drawRows(at("rows"), good, chosen, choose, before);
   const line = good.rows[places.indexOf(chosen)];
   drawMakeup(at("makeup"), line, good.route);
@@ -111,7 +112,7 @@ function choose(place) {
 }
 
 function showVariants() {
-  drawVariants(at("variants"), state.variants, state.opened, {
+  drawVariants(at("variants"), state.variants, {
     rename: (i, name) => { state.variants[i].name = name; changed(); },
     drop: (i) => { state.variants.splice(i, 1); showVariants(); changed(); },
     take: (i) => {

@@ -28,8 +28,10 @@ export function drawSection(place, answer, chosen, choose) {
   for (const side of [-0.5, 0.5])
     shape(svg, "circle", { cx: x(hole.x + side * hole.diameter), cy: y(hole.start), r: 5.5, style: "fill:none;stroke:var(--mark);stroke-width:2" });
   const words = `first: row ${first.row}, ${first.sheet}, ${first.shown.life_flights} flights`;
-  const left = x(hole.x) < width / 2;
-  shape(svg, "text", { class: "mark", x: left ? Math.max(4, x(hole.x) - 12) : Math.min(width - 4, x(hole.x) + 12), y: 16, "font-size": 13, "text-anchor": left ? "start" : "end" }, words);
+  const title = shape(svg, "text", { class: "mark", y: 16, "font-size": 13 }, words);
+  const long = title.getComputedTextLength();
+  if (long > width - 8) title.setAttribute("textLength", width - 8);
+  title.setAttribute("x", Math.max(4, Math.min(x(hole.x) - 12, width - 4 - long)));
   shape(svg, "line", { x1: x(hole.x + hole.diameter / 2), y1: y(hole.start) - 6, x2: x(hole.x + hole.diameter / 2), y2: 22, style: "stroke:var(--mark)" });
 }
 

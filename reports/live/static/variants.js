@@ -29,7 +29,7 @@ const LINES = [
   ["threshold used", "share_used"], ["peak stress", "peak"],
 ];
 
-export function drawVariants(table, variants, opened, act) {
+export function drawVariants(table, variants, act) {
   if (!variants.length) {
     table.replaceChildren(element("caption", { className: "quiet" }, "Keep a variant to see it here beside the next."));
     return;
@@ -44,11 +44,11 @@ export function drawVariants(table, variants, opened, act) {
   const lines = LINES.map(([words, key]) => element("tr", {}, element("th", { className: "words", scope: "row" }, words),
     ...variants.map((own) => element("td", {}, (own.summary?.[key] ?? (own.summary === null ? "has faults" : "...")) +
       (key === "life_flights" && variants.length > 1 && own.summary && (own.summary.life ?? Infinity) === best ? " (longest)" : "")))));
-  const unlike = element("tr", {}, element("th", { className: "words", scope: "row" }, "differs from the opened case in"),
-    ...variants.map((own) => {
-      const found = differences(opened, own.document);
+  const unlike = element("tr", {}, element("th", { className: "words", scope: "row" }, "differs from the first in"),
+    ...variants.map((own, i) => {
+      const found = differences(variants[0].document, own.document);
       const shown = found.length > 8 ? [...found.slice(0, 8), `and ${found.length - 8} more`] : found;
-      return element("td", { className: "words" }, ...(shown.length ? shown.flatMap((text) => [text, element("br")]) : ["nothing"]));
+      return element("td", { className: "words" }, ...(shown.length ? shown.flatMap((text) => [text, element("br")]) : [i ? "nothing" : ""]));
     }));
   const tools = element("tr", {}, element("td"), ...variants.map((own, i) => {
     const back = element("button", { type: "button", "aria-label": `Go on from ${own.name}` }, "Go on from it");
