@@ -110,7 +110,13 @@ def counted_figure(counted: Counted, inch: bool = False) -> Figure:
 
 
 def spectrum_text(
-    spectrum: Spectrum, cycles: Cycles, parts: Mapping[str, Cycles], damage: Mapping[str, float], law: str, inch: bool
+    spectrum: Spectrum,
+    factors: Mapping[str, float],
+    cycles: Cycles,
+    parts: Mapping[str, Cycles],
+    damage: Mapping[str, float],
+    law: str,
+    inch: bool,
 ) -> str:
     """Return a spectrum's flights and phases and what its cycles are, for a terminal."""
     points = spectrum.sequence().ends
@@ -124,7 +130,7 @@ def spectrum_text(
     wide = max(len(name) for name in parts)
     lines += ["", "Cycles of a flight by the phase that holds them"]
     lines.append(f"  {'':{wide}}  {'steady ' + unit:>11}  {'cycles':>10}  {'range to':>9}  {'damage':>8}")
-    steady = _steady(spectrum)
+    steady = _steady(spectrum, spectrum.channels | dict(factors))
     for name, own in parts.items():
         level = f"{from_si(steady[name], unit):.1f}" if name in steady else ""
         largest = f"{from_si(float(own.range.max()), unit):.1f}" if len(own) else "-"
@@ -186,10 +192,9 @@ def damage_by_phase(
     return parts, {name: damage(own) for name, own in parts.items()}
 
 
-def _steady(spectrum: Spectrum) -> dict[str, float]:
+def _steady(spectrum: Spectrum, stress_per: Mapping[str, float]) -> dict[str, float]:
     return {
-        phase.name: sum(spectrum.channels[name] * value for name, value in phase.steady.items())
-        for phase in spectrum.phases
+        phase.name: sum(stress_per[name] * value for name, value in phase.steady.items()) for phase in spectrum.phases
     }
 
 

@@ -53,7 +53,7 @@ def spectrum(name: str | None, factors: tuple[str, ...], case: Path | None, out:
         parts, shares = damage_by_phase(given, own, lambda table: float(cycle_damage(estimate, table).sum()))
     else:
         parts, shares = damage_by_phase(given, own)
-    click.echo(plain(spectrum_text(given, cycles, parts, shares, law, inch)))
+    click.echo(plain(spectrum_text(given, own, cycles, parts, shares, law, inch)))
     if said:
         click.echo(plain(said))
     if out is not None:

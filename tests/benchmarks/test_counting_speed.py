@@ -15,7 +15,8 @@ def test_it_runs(tmp_path):
 
 @pytest.mark.parametrize("name", [*adversaries(8), "walk"])
 def test_long_and_short_counts_agree(name):
-    values = walk(4001) if name == "walk" else adversaries(4001)[name]
-    short, long = spectra.count(values).merged(), spectra.count_long(values).cycles
+    values = walk(1501) if name == "walk" else adversaries(1501)[name]
+    # few enough values to be kept pair by pair, in blocks all the same
+    short, long = spectra.count(values).merged(), spectra.count_long(values, short=0, block=200).cycles
     np.testing.assert_array_equal(short.range, long.range)
     np.testing.assert_array_equal(short.count, long.count)
