@@ -19,13 +19,15 @@ import rainflow
 import spectra
 
 PROGRAM = """
-import resource, sys, time
+import sys, time
 import numpy as np
 import spectra
 values = np.load(sys.argv[1], mmap_mode="r")
 begin = time.perf_counter()
 found = spectra.count_long(values)
-print(time.perf_counter() - begin, resource.getrusage(resource.RUSAGE_SELF).ru_maxrss / 1024, found.cycles.total)
+spent = time.perf_counter() - begin
+peak = next(line.split()[1] for line in open("/proc/self/status") if line.startswith("VmHWM"))
+print(spent, int(peak) / 1024, found.cycles.total)
 """
 
 
@@ -77,10 +79,12 @@ def from_map(folder: Path, size: int, block: int = 10_000_000) -> tuple[float, f
         part[:] = walk(part.size, begin)
     stored.flush()
     del stored
-    done = subprocess.run([sys.executable, "-c", PROGRAM, str(path)], capture_output=True, text=True, check=True)
-    spent, peak, _ = map(float, done.stdout.split())
+    runs = []
+    for _ in range(2):  # the second finds as much of the file in memory as the system keeps
+        done = subprocess.run([sys.executable, "-c", PROGRAM, str(path)], capture_output=True, text=True, check=True)
+        runs.append(tuple(map(float, done.stdout.split()[:2])))
     path.unlink()
-    return spent, peak
+    return min(spent for spent, _ in runs), max(peak for _, peak in runs)
 
 
 def from_csv(folder: Path, rows: int) -> tuple[float, float]:
@@ -103,11 +107,11 @@ def main() -> None:
     own, package, read = against_package(10_000_000, 400_000)
     print(f"10 million values: {own / 1e6:.1f} million a second, {own / package:.0f} times the package on one core;")
     print(f"  reading the array once goes at {read / 1e6:.0f} million a second")
-    usual = seconds(lambda: spectra.count(walk(1_000_000)))
-    plain = seconds(lambda: walk(1_000_000))
+    random_case = walk(1_000_000)
+    usual = seconds(lambda: spectra.count(random_case))
     for name, values in adversaries(1_000_000).items():
         spent = seconds(lambda values=values: spectra.count(values))
-        print(f"{name:12} 1 million: {spent / max(usual - plain, 1e-9):.1f} times the random case")
+        print(f"{name:12} 1 million: {spent / usual:.1f} times the random case")
     largest = int(float(sys.argv[1])) if len(sys.argv) > 1 else 100_000_000
     with tempfile.TemporaryDirectory() as folder:
         rates = {}
