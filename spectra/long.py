@@ -21,7 +21,7 @@ from spectra.tally import Tally
 Array = NDArray[np.float64]
 Progress = Callable[[int, int], None]
 
-BLOCK = 1 << 20
+BLOCK = 1 << 19
 """Values a thread counts at a time."""
 SHORT = 1 << 21
 """Histories up to so many values are counted whole, all pairs kept."""
