@@ -46,7 +46,7 @@ def page(browser, server):
     own.on("pageerror", lambda error: complaints.append(str(error)))
     context.on("request", lambda request: asked.append(request.url))
     own.goto(server.address)
-    own.wait_for_selector("#fit svg", timeout=60_000)
+    own.wait_for_selector("#fit svg", timeout=20_000)
     yield own
     context.close()
     assert complaints == []
@@ -176,7 +176,7 @@ def test_variants_are_kept_named_and_come_back_with_the_address(page, browser):
         where.goto("about:blank" if where is page else page.url)
         if where is page:
             page.go_back()
-        where.wait_for_selector("#fit svg", timeout=60_000)
+        where.wait_for_selector("#fit svg", timeout=20_000)
         until(where, "document.querySelectorAll('#variants thead input').length === 4")
         until(where, "!document.querySelector('#variants').textContent.includes('...')")
         shown = where.locator("#variants tbody tr:nth-child(2) td").all_text_contents()
@@ -255,7 +255,7 @@ def test_fifty_changes_a_second_are_coalesced(page):
 def test_two_pages_do_not_disturb_each_other(page, browser, server):
     other = browser.new_page()
     other.goto(server.address)
-    other.wait_for_selector("#fit svg", timeout=60_000)
+    other.wait_for_selector("#fit svg", timeout=20_000)
     theirs = first_life(other)
     change(page, FIT, "0.8")
     page.wait_for_timeout(300)
@@ -298,8 +298,7 @@ def test_nothing_sticks_out_at_three_widths(page, width, scheme):
     assert abs(ink - ground) > 400
     outside = page.evaluate(
         """() => [...document.querySelectorAll("svg")].flatMap((svg) => { const frame = svg.getBoundingClientRect();
-          
-          const out = (box) => box.left < frame.left - 1 || box.right > frame.right + 1 || box.bottom > frame.bottom + 1;
+          const out = (box) => box.left < frame.left - 1 || box.right > frame.right + 1 || box.bottom > frame.bottom;
           const texts = [...svg.querySelectorAll("text")];
           return texts.filter((own) => out(own.getBoundingClientRect())).map((own) => own.textContent); })"""
     )
@@ -312,7 +311,7 @@ def test_a_server_that_has_ended_is_said(browser, tmp_path):
     with served(tmp_path) as running:
         own = browser.new_page()
         own.goto(running.address)
-        own.wait_for_selector("#fit svg", timeout=60_000)
+        own.wait_for_selector("#fit svg", timeout=20_000)
     own.fill(FIT, "0.2")
     until(own, "document.querySelector('#state').textContent.includes('start `faying try` again')")
     own.close()

@@ -126,11 +126,17 @@ function showVariants() {
   });
 }
 
+let answering = false;
+
+// One after another: a second request of one name would replace the first.
 async function answerVariants() {
-  for (const own of state.variants) {
-    if (own.summary === undefined) own.summary = await ask("answer", { document: own.document }, " kept").then(summary, () => undefined);
+  if (answering) return;
+  answering = true;
+  for (let own; (own = state.variants.find((each) => each.summary === undefined)); ) {
+    own.summary = await ask("answer", { document: own.document }, " kept").then(summary, () => ({ row: "no answer" }));
     showVariants();
   }
+  answering = false;
 }
 
 function keep() {

@@ -42,7 +42,7 @@ export function drawVariants(table, variants, act) {
       return element("th", { scope: "col" }, name);
     }));
   const lines = LINES.map(([words, key]) => element("tr", {}, element("th", { className: "words", scope: "row" }, words),
-    ...variants.map((own) => element("td", {}, (own.summary?.[key] ?? (own.summary === null ? "has faults" : "...")) +
+    ...variants.map((own) => element("td", {}, (own.summary?.[key] ?? { undefined: "...", null: "has faults" }[own.summary] ?? "") +
       (key === "life_flights" && variants.length > 1 && own.summary && (own.summary.life ?? Infinity) === best ? " (longest)" : "")))));
   const unlike = element("tr", {}, element("th", { className: "words", scope: "row" }, "differs from the first in"),
     ...variants.map((own, i) => {
