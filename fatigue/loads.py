@@ -7,6 +7,7 @@ from dataclasses import dataclass
 import spectra
 from fatigue.case.build import Case
 from spectra import Cycles, History
+from spectra.units import from_si, split_unit
 
 
 @dataclass(frozen=True, eq=False)
@@ -45,7 +46,16 @@ def count_loads(case: Case) -> CountedLoads:
         return CountedLoads("blocks of the case file", blocks.scaled(loads.scale), None)
     if loads.history is not None:
         table = loads.history
-        history = spectra.read_history(case.folder / table.file, table.column, table.flights)
+        below = table.ground_below_MPa
+        history = spectra.read_history(
+            case.folder / table.file,
+            table.column,
+            table.flights,
+            {own.column: own.factor for own in table.channels} or None,
+            table.time,
+            None if below is None else spectra.GroundRule(from_si(below, split_unit(table.column)[1] or "MPa")),
+            table.repair,
+        )
     else:
         assert loads.spectrum is not None  # the reader has seen to it
         shipped = loads.spectrum in spectra.shipped()

@@ -15,6 +15,16 @@ _PLACES = {
     "draw_exceedances": "reports.figures.loads",
     "draw_damage_by_range": "reports.figures.loads",
     "draw_curve": "reports.figures.curve",
+    "draw_range_mean": "reports.figures.cycles",
+    "draw_ranges": "reports.figures.cycles",
+    "draw_by_phase": "reports.figures.cycles",
+    "draw_history": "reports.figures.history",
+    "draw_life_against_fit": "reports.figures.fits",
+    "draw_conditions": "reports.figures.fits",
+    "draw_edge": "reports.figures.hole",
+    "draw_loops": "reports.figures.loops",
+    "draw_fit": "reports.figures.fit",
+    "draw_family": "reports.figures.material",
     "ranked_text": "reports.tables",
 }
 

@@ -85,6 +85,14 @@ def _loads(loads: schema.LoadsTable | None, folder: Path) -> Iterator[Fault]:
         yield from _spectrum(loads, folder / loads.spectrum if own else loads.spectrum)
     if loads.factors and loads.spectrum is None:
         yield Fault("loads.factors", "factors combine the channels of a spectrum.", "Leave them out here.")
+    if loads.history is not None and loads.history.flights is None and loads.history.ground_below_MPa is None:
+        yield Fault(
+            "loads.history.flights",
+            "is missing: how many flights the recording covers.",
+            "Give flights, or ground_below_MPa and time to find them by.",
+        )
+    if loads.history is not None and loads.history.ground_below_MPa is not None and loads.history.time is None:
+        yield Fault("loads.history.time", "is missing: a ground level needs times.", "Name the column of times.")
     if loads.history is not None and not (folder / loads.history.file).exists():
         yield Fault(
             "loads.history.file",

@@ -28,12 +28,23 @@ class Table(BaseModel):
     model_config = ConfigDict(strict=True, extra="forbid", frozen=True, allow_inf_nan=False)
 
 
+class ChannelTable(Table):
+    """A column of a recording with its factor: remote gross stress [MPa] per unit of the column."""
+
+    column: Text
+    factor: float
+
+
 class HistoryTable(Table):
-    """A recorded history of the remote gross stress."""
+    """A recorded history of the remote gross stress, or of columns whose sum it is."""
 
     file: Text
-    column: Text
-    flights: Annotated[float, Field(gt=0, le=1e9)]
+    column: Text = "stress_MPa"
+    channels: list[ChannelTable] = Field(default_factory=list)
+    flights: Annotated[float, Field(gt=0, le=1e9)] | None = None
+    time: Text | None = None
+    ground_below_MPa: Annotated[float, Field(ge=-1e4, le=1e4)] | None = None
+    repair: list[Literal["missing", "spikes", "drop-outs"]] = Field(default_factory=list)
 
 
 class BlockTable(Table):
