@@ -59,7 +59,7 @@ def test_channels_are_summed(read):
             'file = "tail.csv", column = "skin_stress_MPa", ground_below_MPa = 8.0',
             "loads.history.time: is missing: a ground level needs times.",
         ),
-        (REPAIRED.replace("8.0", "80.0"), "no flight found"),
+        (REPAIRED.replace("8.0", "90.0"), "no flight found"),
         (REPAIRED.replace("spikes", "spike"), "repair"),
         (REPAIRED.replace("skin_stress_MPa", "skin_MPa"), "there is no such column"),
     ],
