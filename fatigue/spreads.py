@@ -57,6 +57,7 @@ class Spreads:
 
 SINGLE = ("thickness", "pitch", "row_spacing", "load", "curve", "damage_sum")
 BY_ROW = ("hole", "fit", "flexibility")
+MOST_JOINTS = 200_000
 LARGEST = {"percent": 50.0, "log10": 1.0}
 
 
@@ -93,6 +94,22 @@ def spreads_of(table: Mapping[str, object], source: str = "spread") -> Spreads:
     if faults:
         raise InputFaults(source, faults)
     return Spreads(**good)
+
+
+def numbered(texts: Sequence[str]) -> dict[str, object]:
+    """Read ``name=value`` texts; what is no number stays text, for `spreads_of` to refuse.
+
+    >>> numbered(["fit_percent=0.2"])
+    {'fit_percent': 0.2}
+    """
+    found: dict[str, object] = {}
+    for text in texts:
+        key, _, value = text.partition("=")
+        try:
+            found[key.strip()] = float(value)
+        except ValueError:
+            found[key.strip()] = value
+    return found
 
 
 def row_correlation(rows: int, between: float, source: str = "spread") -> Array:
@@ -171,12 +188,16 @@ def draw_sample(splice: Splice, spreads: Spreads, count: int, seed: int) -> Samp
     --------
     >>> import fatigue
     >>> splice = fatigue.read_case(fatigue.demo_case()).splice
-    >>> a, b = (draw_sample(splice, Spreads(), 10, 7).variants.load for _ in range(2))
+    >>> a, b = (draw_sample(splice, Spreads(), 50, 7).variants.load for _ in range(2))
     >>> bool((a == b).all())
     True
     """
-    if count < 2:
-        raise InputFaults("samples", [Fault("samples", f"{count} is too few.", "Take 1000 or more.")])
+    if not 50 <= count <= MOST_JOINTS:
+        raise InputFaults(
+            "joints", [Fault("joints", f"{count} is outside 50 to {MOST_JOINTS}.", "10 000 is a good number.")]
+        )
+    if seed < 0:
+        raise InputFaults("seed", [Fault("seed", f"{seed} is below zero.", "Take 0 or more.")])
     rows = len(splice.rows)
     root = np.linalg.cholesky(row_correlation(rows, spreads.rows_correlation))
     rng = np.random.default_rng(seed)

@@ -15,6 +15,8 @@ COMMANDS = {
     "demo": "Run a shipped, invented case.",
     "try": "Open a local page where a splice answers as it is changed.",
     "compare": "Put hole conditions of one case, or several cases, beside each other.",
+    "sweep": "Show life over one or two inputs, or find the value that gives a wanted life.",
+    "scatter": "Show what drives the life and which row cracks first when inputs scatter.",
     "hole": "Solve one hole: peak stress, range factor and contact.",
     "new": "Write a commented starter case.",
     "fit": "Fit an S-N family to test results with run-outs.",
