@@ -46,7 +46,7 @@ def page(browser, server):
     own.on("pageerror", lambda error: complaints.append(str(error)))
     context.on("request", lambda request: asked.append(request.url))
     own.goto(server.address)
-    own.wait_for_selector("#fit svg", timeout=20_000)
+    own.wait_for_selector("#rows tbody tr", timeout=20_000)
     yield own
     context.close()
     assert complaints == []
@@ -286,6 +286,7 @@ def test_usable_by_keyboard_and_with_words(page):
 @pytest.mark.parametrize("scheme", ["light", "dark"])
 @pytest.mark.parametrize("width", WIDTHS)
 def test_nothing_sticks_out_at_three_widths(page, width, scheme):
+    page.wait_for_selector("#fit svg", timeout=20_000)
     page.emulate_media(color_scheme=scheme)
     page.set_viewport_size({"width": WIDTHS[width], "height": 950})
     page.wait_for_timeout(200)

@@ -92,7 +92,8 @@ export function buildFields(place, document, form, change) {
     const within = form.listed.includes(path[0]) || form.named.includes(path[0]) ? 2 : form.tables[path[0]] ? 1 : 0;
     const id = `f-${where.replace(/[^A-Za-z0-9]+/g, "-")}`;
     const made = element("div", { className: "field", "data-where": where });
-    const label = element("label", { htmlFor: id }, nameKey(path.slice(within)) || key);
+    const parts = (nameKey(path.slice(within)) || key).split(/(?<=[_.])/); // may break there, and nowhere else
+    const label = element("label", { htmlFor: id }, ...parts.flatMap((part) => [part, element("wbr")]));
     const choices = spec.choices ?? names(document, form, path[0], key);
     let input;
     if (choices) {

@@ -55,7 +55,7 @@ function drawBay(svg, bay, section, x, y, scale) {
   if (to <= from) return;
   const band = 0.62 * section.sheets[bay.sheet].thickness * bay.share * scale;
   shape(svg, "rect", { x: x(from), y: y(bay.middle) - band / 2, width: (to - from) * scale, height: band, style: "fill:var(--band)" });
-  if ((to - from) * scale > 40)
+  if ((to - from) * scale > 40 && section.sheets[bay.sheet].thickness * scale > 10)
     shape(svg, "text", { x: x((from + to) / 2), y: y(bay.middle) + 4, "font-size": 11, "text-anchor": "middle" }, `${(100 * bay.share).toFixed(0)} %`);
 }
 
@@ -84,9 +84,15 @@ function drawNames(svg, section, x, y, top, bottom, tallest, scale, width) {
   section.sheets.forEach((sheet, s) => {
     const upper = s < section.sheets.length / 2;
     const corners = sheet.outline.map((corner) => corner[1]);
-    const side = sheet.loaded ? x(section.left) : x(section.right);
-    shape(svg, "text", { class: "soft", x: Math.min(Math.max(side, 4), width - 4), y: upper ? y(Math.max(...corners)) - 5 : y(Math.min(...corners)) + 13, "font-size": 11.5,
-      "text-anchor": sheet.loaded ? "start" : "end" }, `${sheet.name}, ${+sheet.thickness.toPrecision(4)} mm`);
+    const side = Math.min(Math.max(x(sheet.loaded ? section.left : section.right), 4), width - 4);
+    const text = shape(svg, "text", { class: "soft", x: side, "font-size": 11.5, "text-anchor": sheet.loaded ? "start" : "end" },
+      `${sheet.name}, ${+sheet.thickness.toPrecision(4)} mm`);
+    const next = section.fasteners.at(sheet.loaded ? 0 : -1);
+    const room = Math.abs(side - x(next.x)) - 0.8 * next.diameter * scale;
+    // beside the sheet where there is room, else clear of the heads
+    const beside = upper ? y(Math.max(...corners)) - 5 : y(Math.min(...corners)) + 13;
+    const clear = upper ? y(top) - 0.5 * tallest * scale - 30 : low + 14;
+    text.setAttribute("y", text.getComputedTextLength() < room ? beside : clear);
     const corner = sheet.outline, level = (sheet.loaded ? corner[0][1] + corner.at(-1)[1] : 0) / 2;
     if (sheet.loaded) arrow(svg, x(section.left) - 4, -1, y(level));
     const last = corner.slice(corner.length / 2 - 1, corner.length / 2 + 1);
