@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from pathlib import Path
 from textwrap import wrap
+from typing import Any
 
 import numpy as np
 import pandas as pd
@@ -28,6 +29,13 @@ WORDS = {
     "curve": "the material's scatter",
     "damage_sum": "the damage sum at failure",
 }
+
+
+def records(frame: pd.DataFrame) -> list[dict[str, Any]]:
+    """Return a frame's lines by column name."""
+    return [{str(name): value for name, value in line.items()} for line in frame.to_dict("records")]
+
+
 LITTLE = 0.9
 """An input that leaves more than this share of the life at its bad end matters little."""
 
@@ -35,7 +43,7 @@ LITTLE = 0.9
 def drivers_text(study: Scattered, frame: pd.DataFrame) -> str:
     """Return one paragraph, made from the numbers: what drives the answer."""
     life = float(study.base.route.life.min())
-    lines = [line for _, line in frame.iterrows()]
+    lines = records(frame)
     worst, little = lines[0], [WORDS[str(line["input"])] for line in lines if line["worst_ratio"] > LITTLE]
     text = (
         f"At the values of the case a typical hole lives {life_text(life)} flights. What can hurt most is "
@@ -50,12 +58,12 @@ def drivers_text(study: Scattered, frame: pd.DataFrame) -> str:
     text += f", then {listed(others, 'and')}. " if others else ". "
     if little:
         text += f"{listed(little, 'and').capitalize()} cost less than {100 * (1 - LITTLE):.0f} % each. "
-    table = study.table.set_index("row")
-    splice = study.table.iloc[-1]
+    table = {line["row"]: line for line in records(study.table)[:-1]}
+    splice = records(study.table)[-1]
     shares = [
-        f"row {name} in {100 * table.loc[name, 'chance_first']:.0f} %"
+        f"row {name} in {100 * table[name]['chance_first']:.0f} %"
         for name in study.rows
-        if table.loc[name, "chance_first"] > 0.005
+        if table[name]["chance_first"] > 0.005
     ]
     text += (
         f"With everything scattering at once and {study.holes} holes a row, half the joints have their first crack by "
@@ -63,7 +71,7 @@ def drivers_text(study: Scattered, frame: pd.DataFrame) -> str:
         f"(standard error {life_text(splice['q05_error_flights'])}); the first crack comes in {listed(shares, 'and')} "
         "of them. "
     )
-    top = study.rank.iloc[0]
+    top = records(study.rank)[0]
     text += (
         f"Over the joints drawn, life goes most with {top['input']} (rank correlation {top['rank_correlation']:+.2f})."
     )
@@ -93,12 +101,12 @@ def scatter_text(study: Scattered, frame: pd.DataFrame) -> str:
             f"{100 * line['worst_ratio']:.0f} %",
             f"{line['row_down']}, {line['row_up']}",
         )
-        for _, line in frame.iterrows()
+        for line in records(frame)
     ]
     out = [study.base.case.title, "", "One at a time, two standard deviations each way", *aligned(heads, cells, (0, 1))]
-    heads = ("first crack of", "1 in 100", "+-", "1 in 20", "+-", "half", "+-", "chance first", "+-")
-    cells = []
-    for _, line in study.table.iterrows():
+    columns = ("first crack of", "1 in 100", "+-", "1 in 20", "+-", "half", "+-", "chance first", "+-")
+    found: list[tuple[str, ...]] = []
+    for line in records(study.table):
         name = str(line["row"])
         own = [name if name == "splice" else f"row {name}"]
         if np.isnan(line["q50_flights"]):
@@ -107,21 +115,26 @@ def scatter_text(study: Scattered, frame: pd.DataFrame) -> str:
             for q in ("q01", "q05", "q50"):
                 own += [life_text(line[f"{q}_flights"]), life_text(line[f"{q}_error_flights"])]
         own += [f"{100 * line['chance_first']:.1f} %", f"{100 * line['chance_first_error']:.1f}"]
-        cells.append(tuple(own))
+        found.append(tuple(own))
     out += ["", f"{study.count:,} joints, seed {study.seed}, {study.holes} holes a row; +- is one standard error"]
-    out += aligned(heads, cells, (0,))
+    out += aligned(columns, found, (0,))
     out += ["", "Rank correlation with the first crack of the splice"]
     out += [
         f"  {line['input']:<24}{line['rank_correlation']:+.3f} +- {line['error']:.3f}"
-        for _, line in study.rank.head(8).iterrows()
+        for line in records(study.rank.head(8))
     ]
     out += ["", "Convergence of the 1 in 20 life"]
     out += [
         f"  {int(line['samples']):>8,} joints  {life_text(line['q05_flights'])} +- "
         f"{life_text(line['q05_error_flights'])}"
-        for _, line in study.convergence.iterrows()
+        for line in records(study.convergence)
     ]
-    for text in (drivers_text(study, frame), check_text(study), f"{'. '.join(study.notes)}.", CAUTION):
+    for text in (
+        drivers_text(study, frame),
+        check_text(study),
+        ". ".join(text[:1].upper() + text[1:] for text in study.notes) + ".",
+        CAUTION,
+    ):
         out += ["", *wrap(text, 110)]
     return "\n".join(out)
 
@@ -131,9 +144,9 @@ def write_scatter(study: Scattered, frame: pd.DataFrame, folder: Path) -> list[P
     with styled():
         figures = {"swings": new_figure(8.4, 1.4 + 0.42 * len(frame))}
         draw_swings(figures["swings"].subplots(), frame, float(study.base.route.life.min()))
-        for name, draw in (("distribution", draw_distribution), ("inspection", draw_inspection)):
-            figures[name] = new_figure(8.4, 4.4)
-            draw(figures[name].subplots(), study if name == "distribution" else study.base)  # type: ignore[operator]
+        figures["distribution"], figures["inspection"] = new_figure(8.4, 4.4), new_figure(8.4, 4.4)
+        draw_distribution(figures["distribution"].subplots(), study)
+        draw_inspection(figures["inspection"].subplots(), study.base)
     tables = {
         "swings": frame,
         "first_crack": study.table,
@@ -156,8 +169,8 @@ def sweep_text(swept: Swept) -> str:
     """Return a line per value of one input, or the corners and extremes of two."""
     frame = swept.frame()
     keys = [v.key for v in swept.inputs]
-    life = frame["life_flights"]
-    ends = sorted({0, int(life.idxmin()), int(life.idxmax()), len(frame) - 1})
+    life = frame["life_flights"].to_numpy()
+    ends = sorted({0, int(np.argmin(life)), int(np.argmax(life)), len(frame) - 1})
     shown = frame if len(keys) == 1 else frame.loc[ends]
     here = float(swept.base.route.life.min())
     cells = [
@@ -167,7 +180,7 @@ def sweep_text(swept: Swept) -> str:
             f"{line['life_flights'] / here:.3g}",
             f"row {line['row']}, {line['sheet']}",
         )
-        for _, line in shown.iterrows()
+        for line in records(shown)
     ]
     out = [swept.base.case.title, f"As it is: {', '.join(f'{k} {own_value(swept.base, k):g}' for k in keys)}, "
            f"{life_text(here)} flights", ""]  # fmt: skip

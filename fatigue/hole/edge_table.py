@@ -24,7 +24,7 @@ FIT_STEPS = (1 / 300, 1 / 50)
 """Step of the fit's share of N, likewise: contact's end moves by about one point of the edge."""
 FEW = 5e-4
 """Share of the variants in a cell below which it may be coarse."""
-WIDTH_STEP = 0.03
+WIDTH_STEP = 0.015
 """Nodes of d/W lie no further apart."""
 MARGIN = 1e-9
 

@@ -89,14 +89,17 @@ def draw_sweep(ax: Axes, swept: Swept) -> Axes:
         ax.set_ylabel("life [flights]")
         ax.grid(visible=True, which="both")
         ax.legend(fontsize=8)
-        note(ax, "dotted red: another location takes over")
+        if np.diff(governing).any():
+            note(ax, "dotted red: another location takes over")
     else:
         second = swept.inputs[1]
         x, y = first.values, second.values
         shown = np.log10(np.maximum(life.T, 1.0))
         ax.pcolormesh(x, y, governing.T % 4, cmap="Greys", vmin=-1, vmax=9, shading="nearest", rasterized=True)
         if np.ptp(shown) > 1e-9:
-            lines = ax.contour(x, y, shown, levels=8, colors=INK, linewidths=1.1)
+            steps = np.log10([1, 1.5, 2, 3, 5, 7])
+            levels = [k + step for k in range(10) for step in steps if shown.min() < k + step < shown.max()]
+            lines = ax.contour(x, y, shown, levels=levels or 4, colors=INK, linewidths=1.1)
             ax.clabel(lines, fmt=lambda v: life_text(10**v), fontsize=8)
         for i in np.unique(governing).tolist():
             at = np.argwhere(governing == i).mean(axis=0)
