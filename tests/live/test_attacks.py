@@ -236,11 +236,11 @@ def test_a_flood_is_refused_while_a_page_works(server):
     def flood(heads):
         got = []
         request = f"GET /start HTTP/1.1\r\n{heads}\r\n".encode()
+        last = request[:-2] + b"Connection: close\r\n\r\n"
         while not ended.is_set():
             with socket.create_connection(("127.0.0.1", server.port), timeout=20) as own:
                 try:
-                    own.sendall(request * 100)
-                    own.shutdown(socket.SHUT_WR)
+                    own.sendall(request * 100 + last)
                     text = b"".join(iter(lambda own=own: own.recv(65536), b""))
                 except OSError:  # refused: the rest is not listened to
                     continue
