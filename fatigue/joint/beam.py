@@ -49,20 +49,36 @@ def build_beam(layout: Layout, arrays: JointArrays) -> Beam:
     its neighbour, and a step changes its far face; a loaded sheet between two others is stepped on both faces, and
     heights count from its mid-plane. Sheets further out follow, and a sheet that ends leaves its place empty.
     """
-    nominal = arrays.thickness
-    top = nominal - np.cumsum(nominal, axis=-1)
-    middle = top - nominal / 2
+    middle = mid_planes(layout, arrays.thickness)
+    thickness = np.where(layout.extent, arrays.thickness, 0.0)
+    neutral, stiffness = section(arrays.modulus[..., None, :], thickness, middle)
+    return Beam(arrays.length, neutral, stiffness, thickness, middle)
+
+
+def mid_planes(layout: Layout, thickness: Array) -> Array:
+    """Return the height of every sheet's mid-plane, counted as in `build_beam`.
+
+    Parameters
+    ----------
+    layout : Layout
+    thickness : ndarray, shape (..., sheets)
+        Of the whole stack, absent sheets too [mm].
+
+    Returns
+    -------
+    ndarray, shape (..., sheets)
+        [mm]
+    """
+    top = thickness - np.cumsum(thickness, axis=-1)
+    middle = top - thickness / 2
     s = layout.loaded
     if s == 0:
-        zero = top[..., [0]] - nominal[..., [0]]
+        zero = top[..., [0]] - thickness[..., [0]]
     elif s == layout.sheets - 1:
         zero = top[..., [s]]
     else:
         zero = middle[..., [s]]
-    middle = middle - zero
-    thickness = np.where(layout.extent, nominal, 0.0)
-    neutral, stiffness = section(arrays.modulus[..., None, :], thickness, middle)
-    return Beam(arrays.length, neutral, stiffness, thickness, np.asarray(middle))
+    return np.asarray(middle - zero)
 
 
 @dataclass(frozen=True, eq=False)
@@ -183,21 +199,18 @@ def _bend_block(
     load = first[:, None] * levels
     limit = LIGHTEST["pinned" if layout.symmetric else layout.ends]
     lightest = limit**2 * (stiffness / length**2).min(axis=0)
-    root_load = np.sqrt(np.maximum(load, lightest[:, None]))
+    root_load = np.maximum(load, lightest[:, None])
+    np.sqrt(root_load, out=root_load)
     z = neutral[..., None]
     clamped = layout.ends == "clamped"
     stations = station_heights(
         length[..., None], np.sqrt(1 / stiffness)[..., None], z, root_load, clamped, layout.symmetric
     )
-    for r in range(layout.rows):
-        here = np.flatnonzero(layout.row == r).tolist()
-        moment = stations[r + 1] - z[r]
-        moment *= load
-        for i in here:
-            np.multiply(moment, before[:, i, None], out=out[:, i])
-        other_side = [i for i in here if after[:, i].any()]
-        if other_side:
-            moment = stations[r + 1] - z[r + 1]
-            moment *= load
-            for i in other_side:
-                out[:, i] += moment * after[:, i, None]
+    # load (w - z) per arm, of the side that counts
+    slope = before + after
+    offset = before * z[layout.row, :, 0].T + after * z[layout.row + 1, :, 0].T
+    own = np.empty_like(load)
+    for i, r in enumerate(layout.row.tolist()):
+        np.multiply(stations[r + 1], slope[:, i, None], out=own)
+        own -= offset[:, i, None]
+        np.multiply(own, load, out=out[:, i])

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from itertools import pairwise
 from typing import Any
 
 import numpy as np
@@ -10,11 +11,16 @@ from matplotlib.colors import LogNorm
 from matplotlib.patches import Polygon, Rectangle
 
 from fatigue.joint import Joint
+from fatigue.joint.beam import mid_planes
 from fatigue.life import Estimate
 from fatigue.splice import Splice
 from reports.figures.style import DAMAGE, INK, MARK, METAL, PAPER, SOFT, life_text
 
 GHOST = "#b9c0c8"
+BESIDE = 1.15
+"""How far to each side of a row's axis its damage is coloured, in hole diameters."""
+BUTT = 0.4
+"""Half of the gap drawn at the butt line [mm]."""
 SHADES = 1e-4
 """Damage over the worst location's below which a location is drawn in the lightest shade."""
 
@@ -59,7 +65,8 @@ def draw_section(ax: Axes, estimate: Estimate) -> Axes:
 def reach(splice: Splice) -> tuple[float, float]:
     """Return how far left and right the section is drawn: the free lengths are cut short."""
     span = splice.rows[-1].position
-    stub = max(4.5 * max(row.hole_diameter for row in splice.rows), 0.28 * span)
+    between = 0 < splice.first_loaded < len(splice.sheets) - 1  # its name needs room beside the sheets outside it
+    stub = max((5.5 if between else 4.5) * max(row.hole_diameter for row in splice.rows), 0.28 * span)
     right = splice.to_centre if splice.to_centre > 0.0 else stub
     return -stub, span + right
 
@@ -103,28 +110,35 @@ def _segment_edges(splice: Splice, left: float, right: float) -> np.ndarray:
 
 
 def sheet_outline(splice: Splice, joint: Joint, sheet: int, left: float, right: float) -> np.ndarray:
-    """Return the corners of a sheet's section, ends and steps included, shape (k, 2) [mm]."""
-    beam, own = joint.beam, splice.sheets[sheet]
-    edges = _segment_edges(splice, left, right)
-    upper, lower = [], []
-    for i in np.flatnonzero(beam.thickness[:, sheet] > 0.0).tolist():
-        x0, x1 = edges[i], edges[i + 1]
-        half = beam.thickness[i, sheet] / 2
-        for x in (x0, x1):
-            upper.append((x, beam.middle[i, sheet] + half))
-            lower.append((x, beam.middle[i, sheet] - half))
-    first, last = splice.rows[own.first_row].position, splice.rows[own.last_row].position
-    if not upper:  # one row only: the sheet is its two ends
-        i = own.first_row + 1
-        half = own.thickness / 2
-        upper = [(first, beam.middle[i, sheet] + half)] * 2
-        lower = [(first, beam.middle[i, sheet] - half)] * 2
-    if own.start == "free":
-        upper[0], lower[0] = (first - own.edge, upper[0][1]), (first - own.edge, lower[0][1])
+    """Return the corners of a sheet's section, ends and steps included, shape (k, 2) [mm].
+
+    At a step the thinner side takes in the hole and what is coloured round it.
+    """
+    own, edges = splice.sheets[sheet], _segment_edges(splice, left, right)
+    middle, thickness = mid_planes(joint.layout, joint.arrays.thickness), joint.arrays.thickness
+    first = own.first_row if own.start == "free" else 0
+    last = own.last_row + 1 if own.end == "free" else len(splice.rows)
+    begin = splice.rows[own.first_row].position - own.edge if own.start == "free" else left
+    stop = right
     if own.end == "free":
-        stop = min(last + own.edge, right - 0.4) if splice.to_centre > 0 else last + own.edge
-        upper.append((stop, upper[-1][1]))
-        lower.append((stop, lower[-1][1]))
+        stop = splice.rows[own.last_row].position + own.edge
+        stop = min(stop, right - BUTT) if splice.to_centre > 0 else stop
+    pieces = []  # from x on: mid-plane and thickness
+    for i in range(first, last + 1):
+        if i > first:
+            row = i - 1
+            beside = BESIDE * splice.rows[row].hole_diameter
+            pieces.append((edges[i] - beside, *_at_row(joint, row, sheet)))
+            pieces.append((edges[i] + beside, middle[i, sheet], thickness[i, sheet]))
+        else:
+            pieces.append((begin, middle[i, sheet], thickness[i, sheet]))
+    changes = [pieces[0], *(b for a, b in pairwise(pieces) if a[1:] != b[1:])]
+    ends = [*(np.clip(x, begin, stop) for x, _, _ in changes[1:]), stop]
+    upper, lower = [], []
+    for (x, m, t), end in zip(changes, ends, strict=True):
+        x0, x1 = float(np.clip(x, begin, stop)), float(end)
+        upper += [(x0, m + t / 2), (x1, m + t / 2)]
+        lower += [(x0, m - t / 2), (x1, m - t / 2)]
     return np.array([*upper, *reversed(lower)])
 
 
@@ -157,7 +171,7 @@ def _damage(ax: Axes, estimate: Estimate) -> None:
         row = splice.rows[r]
         colour = DAMAGE(norm(max(damage[i] / worst, SHADES))) if worst > 0 else METAL
         middle, thickness = at_hole(joint, i)
-        reach = 1.15 * row.hole_diameter
+        reach = BESIDE * row.hole_diameter
         ax.add_patch(
             Rectangle(
                 (row.position - reach, middle - thickness / 2),
@@ -173,10 +187,12 @@ def _damage(ax: Axes, estimate: Estimate) -> None:
 
 def at_hole(joint: Joint, location: int) -> tuple[float, float]:
     """Return mid-plane height and thickness of a sheet at one of its holes [mm]."""
-    r, s = int(joint.row[location]), int(joint.sheet[location])
-    beam = joint.beam
-    segment = r if beam.thickness[r, s] > 0 else r + 1
-    return float(beam.middle[segment, s]), float(joint.thickness[location])
+    return _at_row(joint, int(joint.row[location]), int(joint.sheet[location]))
+
+
+def _at_row(joint: Joint, row: int, sheet: int) -> tuple[float, float]:
+    thickness = joint.arrays.at_holes[row]
+    return float(mid_planes(joint.layout, thickness)[sheet]), float(thickness[sheet])
 
 
 def _fastener(ax: Axes, splice: Splice, joint: Joint, r: int) -> None:

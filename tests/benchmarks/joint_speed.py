@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import replace
-from time import perf_counter
+from time import process_time
 
 import numpy as np
 
@@ -43,17 +43,20 @@ def one_by_one(splice: Splice, drawn: dict[str, np.ndarray], count: int) -> list
 
 
 def measure(count: int, looped: int) -> tuple[float, float, float]:
-    """Return seconds a variant in one call and in the loop, and the largest difference over the largest value."""
+    """Return processor seconds a variant in one call and in the loop, and the largest difference of the numbers.
+
+    Processor time, with one thread for the linear algebra: others on the machine count less than by the clock.
+    """
     splice, drawn = random_variants(count)
     layout, arrays = layout_of(splice), replace(arrays_of(splice), **drawn)
     call = loop = float("inf")
-    for _ in range(3):  # the best of three each: the machine may be busy
-        begin = perf_counter()
+    for _ in range(3):  # the best of three each
+        begin = process_time()
         many = solve_variants(layout, arrays, LEVELS)
-        call = min(call, (perf_counter() - begin) / count)
-        begin = perf_counter()
+        call = min(call, (process_time() - begin) / count)
+        begin = process_time()
         single = one_by_one(splice, drawn, looped)
-        loop = min(loop, (perf_counter() - begin) / looped)
+        loop = min(loop, (process_time() - begin) / looped)
     difference = max(
         max(
             np.abs(many.loads.transfer[k] - transfer).max(),
